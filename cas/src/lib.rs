@@ -1,0 +1,1 @@
+//! Exact algebra: expressions, canonical forms, verdicts.

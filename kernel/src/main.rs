@@ -1,0 +1,7 @@
+//! The command line `gudgeon`.
+//!
+//! See the commands below.
+
+fn main() {
+    evcxr::runtime_hook();
+}

@@ -1,0 +1,1 @@
+//! Checks across crates and against published results.

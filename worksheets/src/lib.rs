@@ -1,0 +1,1 @@
+//! Analytical mechanics for notebook cells.
