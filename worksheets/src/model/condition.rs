@@ -1,0 +1,15 @@
+//! Side conditions that a model states about its quantities.
+
+use cas::Expr;
+
+/// Something that must hold for a statement to be valid.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
+#[non_exhaustive]
+pub enum Condition {
+    /// The expression is not zero.
+    NotZero(Expr),
+    /// The expression is zero or above.
+    NotNegative(Expr),
+    /// The expression is above zero.
+    Positive(Expr),
+}
