@@ -2,6 +2,7 @@
 
 use cas::{Expr, Name, Symbol};
 
+use super::body::End;
 use super::condition::Condition;
 use super::vector::Vector;
 
@@ -29,6 +30,8 @@ pub enum ForceKind {
     },
     /// A linear spring: `stiffness (length - rest_length)`, pulling its ends together.
     Spring {
+        /// The two ends.
+        ends: [End; 2],
         /// The stiffness.
         stiffness: Expr,
         /// The length without load.
@@ -38,6 +41,8 @@ pub enum ForceKind {
     },
     /// A linear damper: `coefficient` times the rate of its length, resisting it.
     Damper {
+        /// The two ends.
+        ends: [End; 2],
         /// The damping coefficient.
         coefficient: Expr,
     },

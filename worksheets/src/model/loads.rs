@@ -147,6 +147,7 @@ impl Model {
         self.forces.push(Force {
             name,
             kind: ForceKind::Spring {
+                ends: [a, b],
                 stiffness,
                 rest_length,
                 length,
