@@ -1,0 +1,159 @@
+//! What the records in the outputs of a worksheet say: steps by verdict, side conditions, reference run.
+
+use serde_json::Value;
+use std::collections::{BTreeMap, BTreeSet};
+
+/// The MIME type of a record.
+const RECORD: &str = "application/vnd.gudgeon.record+json";
+
+/// What the records of one worksheet say together.
+#[derive(Debug, Default, Clone, PartialEq)]
+pub struct Facts {
+    /// The verdict of each step, by its key: several cells may show the same step.
+    verdicts: BTreeMap<String, String>,
+    conditions: BTreeSet<String>,
+    references: Vec<Reference>,
+}
+
+/// One comparison with the numerical reference.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Reference {
+    /// The largest deviation, as it was printed.
+    pub largest_deviation: String,
+    /// What was allowed.
+    pub tolerance: String,
+    /// Whether the deviation is within the tolerance.
+    pub agrees: bool,
+}
+
+impl Facts {
+    /// Adds what one output says, if it holds a record.
+    pub fn add_output(&mut self, output: &Value) {
+        let record = &output["data"][RECORD];
+        for step in record["steps"].as_array().into_iter().flatten() {
+            let kind = step["verdict"]["kind"].as_str().unwrap_or("Undecided");
+            let key = match &step["key"] {
+                Value::String(key) => key.clone(),
+                // A step without a key is known by all that it says.
+                Value::Null => step.to_string(),
+                other => other.to_string(),
+            };
+            self.verdicts.insert(key, kind.to_owned());
+            for condition in step["conditions"].as_array().into_iter().flatten() {
+                self.conditions.insert(match condition {
+                    Value::String(text) => text.clone(),
+                    other => other.to_string(),
+                });
+            }
+        }
+        let reference = &record["reference"];
+        if let Some(agrees) = reference["agrees"].as_bool() {
+            let text = |name: &str| match &reference[name] {
+                Value::String(text) => text.clone(),
+                other => other.to_string(),
+            };
+            let found = Reference {
+                largest_deviation: text("largest_deviation"),
+                tolerance: text("tolerance"),
+                agrees,
+            };
+            if !self.references.contains(&found) {
+                self.references.push(found);
+            }
+        }
+    }
+
+    /// How many steps have a verdict of this kind.
+    #[must_use]
+    pub fn steps_with(&self, kind: &str) -> usize {
+        self.verdicts.values().filter(|verdict| *verdict == kind).count()
+    }
+
+    /// How many steps there are.
+    #[must_use]
+    pub fn steps(&self) -> usize {
+        self.verdicts.len()
+    }
+
+    /// The distinct side conditions, in order of their text.
+    #[must_use]
+    pub fn conditions(&self) -> &BTreeSet<String> {
+        &self.conditions
+    }
+
+    /// The comparison with the largest deviation.
+    #[must_use]
+    pub fn worst_reference(&self) -> Option<&Reference> {
+        let size = |reference: &Reference| {
+            reference
+                .largest_deviation
+                .parse::<f64>()
+                // What is no number deviates beyond all bounds.
+                .ok()
+                .filter(|size| !size.is_nan())
+                .unwrap_or(f64::INFINITY)
+        };
+        self.references.iter().max_by(|left, right| {
+            let worse = (!left.agrees).cmp(&!right.agrees);
+            worse.then(size(left).total_cmp(&size(right)))
+        })
+    }
+
+    /// Whether no step is refuted and every reference run agrees.
+    #[must_use]
+    pub fn hold(&self) -> bool {
+        self.steps_with("Refuted") == 0 && self.references.iter().all(|reference| reference.agrees)
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use serde_json::json;
+
+    fn output(record: Value) -> Value {
+        json!({"data": {RECORD: record}, "output_type": "execute_result"})
+    }
+
+    #[test]
+    fn a_step_shown_twice_counts_once() {
+        let step = |key: &str, kind: &str| json!({"key": key, "verdict": {"kind": kind}, "conditions": ["m is not 0"]});
+        let mut facts = Facts::default();
+        facts.add_output(&output(
+            json!({"steps": [step("a", "Proved"), step("b", "Supported")]}),
+        ));
+        facts.add_output(&output(
+            json!({"steps": [step("a", "Proved"), step("c", "Undecided")]}),
+        ));
+        assert_eq!(facts.steps(), 3);
+        assert_eq!(facts.steps_with("Proved"), 1);
+        assert_eq!(facts.conditions().len(), 1);
+        assert!(facts.hold());
+        facts.add_output(&output(json!({"steps": [step("d", "Refuted")]})));
+        assert!(!facts.hold());
+    }
+
+    #[test]
+    fn a_reference_that_disagrees_is_the_worst() {
+        let reference = |deviation: &str, agrees: bool| {
+            output(json!({"reference": {
+                "largest_deviation": deviation, "tolerance": "1e-9", "agrees": agrees}}))
+        };
+        let mut facts = Facts::default();
+        facts.add_output(&reference("1.2e-12", true));
+        facts.add_output(&reference("3e-10", true));
+        assert_eq!(facts.worst_reference().unwrap().largest_deviation, "3e-10");
+        assert!(facts.hold());
+        facts.add_output(&reference("1e-11", false));
+        assert_eq!(facts.worst_reference().unwrap().largest_deviation, "1e-11");
+        assert!(!facts.hold());
+    }
+
+    #[test]
+    fn other_outputs_say_nothing() {
+        let mut facts = Facts::default();
+        facts.add_output(&json!({"output_type": "stream", "text": ["x"]}));
+        facts.add_output(&output(json!("not a record")));
+        assert_eq!(facts, Facts::default());
+    }
+}
