@@ -2,4 +2,7 @@
 #![forbid(unsafe_code)]
 
 pub mod model;
+pub mod prelude;
 pub mod quantity;
+pub mod sheet;
+pub mod stop;

@@ -7,6 +7,7 @@
 //! Refused alternative: handles that are indexes into the model. A particle's handle is its own
 //! content, so a handle from another sheet is noticed instead of naming something else.
 
+mod along;
 mod assumption;
 mod body;
 mod check;
@@ -15,16 +16,19 @@ mod declare;
 mod declared;
 mod error;
 mod force;
-mod loads;
+mod forces;
+mod reactions;
 mod vector;
 
 pub use assumption::{Assumption, Origin};
-pub use body::{End, Particle};
+pub use body::{End, EndChoice, Particle, ParticleChoice};
 pub use condition::Condition;
 pub use declared::{Declared, Role};
 pub use error::ModelError;
 pub use force::{Force, ForceKind, Load, Reaction, ReactionKind};
 pub use vector::{Vector, vector};
+
+use std::collections::BTreeSet;
 
 use cas::{Expr, Name, Symbol};
 
@@ -107,19 +111,6 @@ impl Model {
             .collect()
     }
 
-    /// The rate of change of every symbol that changes with time: 1 for time itself, the velocity
-    /// for a coordinate, the acceleration for a velocity.
-    #[must_use]
-    pub fn rate_pairs(&self) -> Vec<(Symbol, Expr)> {
-        let motion = self.coordinates().into_iter().flat_map(|coordinate| {
-            let velocity = coordinate.primed();
-            [(coordinate, velocity), (velocity, velocity.primed())]
-        });
-        std::iter::once((self.time(), Expr::one()))
-            .chain(motion.map(|(symbol, rate)| (symbol, Expr::from(rate))))
-            .collect()
-    }
-
     /// Refuses a model from which nothing can be derived.
     ///
     /// # Errors
@@ -141,7 +132,7 @@ impl Model {
                 components,
             });
         }
-        let moved: std::collections::BTreeSet<Symbol> = self
+        let moved: BTreeSet<Symbol> = self
             .position_components()
             .into_iter()
             .flat_map(Expr::symbols)
@@ -152,3 +143,6 @@ impl Model {
         }
     }
 }
+
+#[cfg(test)]
+mod tests;

@@ -55,13 +55,49 @@ impl End {
     }
 }
 
-impl From<Particle> for End {
+/// A particle as a statement chooses it: by its handle or by its name.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub enum ParticleChoice {
+    /// The value that the declaration returned.
+    Handle(Particle),
+    /// The name.
+    Named(String),
+}
+
+impl From<Particle> for ParticleChoice {
     fn from(particle: Particle) -> Self {
-        Self::Particle(particle)
+        Self::Handle(particle)
     }
 }
 
-impl From<Vector> for End {
+impl From<&str> for ParticleChoice {
+    fn from(name: &str) -> Self {
+        Self::Named(name.to_owned())
+    }
+}
+
+/// An end as a statement chooses it: a particle or a point.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub enum EndChoice {
+    /// A particle.
+    Particle(ParticleChoice),
+    /// A point fixed in the inertial frame or moved in a prescribed way.
+    Point(Vector),
+}
+
+impl From<Particle> for EndChoice {
+    fn from(particle: Particle) -> Self {
+        Self::Particle(particle.into())
+    }
+}
+
+impl From<&str> for EndChoice {
+    fn from(name: &str) -> Self {
+        Self::Particle(name.into())
+    }
+}
+
+impl From<Vector> for EndChoice {
     fn from(position: Vector) -> Self {
         Self::Point(position)
     }

@@ -5,7 +5,7 @@ use std::collections::BTreeSet;
 use cas::{Expr, Kind, Name, Symbol, postorder};
 
 use super::Model;
-use super::body::Particle;
+use super::body::ParticleChoice;
 use super::declared::Role;
 use super::error::ModelError;
 use super::vector::Vector;
@@ -114,7 +114,7 @@ impl Model {
         components.into_iter().try_for_each(|(component, axis)| {
             self.check(
                 component,
-                &format!("{place}, component {axis},"),
+                &format!("component {axis} of {place}"),
                 allowed,
                 Some(expected),
             )
@@ -202,36 +202,27 @@ impl Model {
             symbol: symbol.to_owned(),
             place: place.to_owned(),
             nearest: nearest_of(name.as_str(), known),
+            declared: self.quantities.iter().map(|d| d.name).collect(),
         }
     }
 
-    /// The place of a particle, which must be as this sheet has it.
-    pub(super) fn place_of(&self, particle: Particle) -> Result<usize, ModelError> {
-        match self
-            .particles
-            .iter()
-            .position(|known| known.name == particle.name)
-        {
-            Some(place) if self.particles[place] == particle => Ok(place),
-            Some(_) => Err(ModelError::ForeignParticle { name: particle.name }),
-            None => Err(self.no_particle(particle.name.as_str())),
-        }
-    }
-
-    /// The particle of this name.
-    ///
-    /// # Errors
-    /// No particle has the name; the error suggests the nearest.
-    pub fn particle_named(&self, name: &str) -> Result<Particle, ModelError> {
-        let found = self.particles.iter().find(|known| known.name.as_str() == name);
-        found.copied().ok_or_else(|| self.no_particle(name))
-    }
-
-    fn no_particle(&self, name: &str) -> ModelError {
-        let known = self.particles.iter().map(|p| p.name.as_str().to_owned());
-        ModelError::UnknownParticle {
-            name: name.to_owned(),
-            nearest: nearest_of(name, known),
+    /// The place of a chosen particle, which must be as this sheet has it.
+    pub(super) fn place_of(&self, choice: &ParticleChoice) -> Result<usize, ModelError> {
+        let name = match choice {
+            ParticleChoice::Handle(particle) => particle.name.as_str(),
+            ParticleChoice::Named(name) => name,
+        };
+        let known = self.particles.iter().map(|known| known.name.as_str());
+        let place = known.clone().position(|known| known == name);
+        match (place, choice) {
+            (Some(place), ParticleChoice::Handle(particle)) if self.particles[place] != *particle => {
+                Err(ModelError::ForeignParticle { name: particle.name })
+            }
+            (Some(place), _) => Ok(place),
+            (None, _) => Err(ModelError::UnknownParticle {
+                name: name.to_owned(),
+                nearest: nearest_of(name, known.map(str::to_owned)),
+            }),
         }
     }
 

@@ -232,6 +232,8 @@ impl Model {
 }
 
 /// The text without surrounding blanks, `None` where nothing is left.
+///
+/// Control characters are refused because standard output is a protocol of lines.
 fn text(what: &str, given: &str) -> Result<Option<String>, ModelError> {
     let trimmed = given.trim();
     let length = trimmed.chars().count();
@@ -240,6 +242,13 @@ fn text(what: &str, given: &str) -> Result<Option<String>, ModelError> {
             what: what.to_owned(),
             length,
             limit: MOST_CHARACTERS,
+        });
+    }
+    if let Some((place, character)) = trimmed.chars().enumerate().find(|(_, c)| c.is_control()) {
+        return Err(ModelError::Unprintable {
+            what: what.to_owned(),
+            character,
+            place: place + 1,
         });
     }
     Ok((!trimmed.is_empty()).then(|| trimmed.to_owned()))

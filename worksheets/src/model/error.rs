@@ -30,6 +30,16 @@ pub enum ModelError {
         /// The limit.
         limit: usize,
     },
+    /// A text has a character that cannot be printed, such as a line end.
+    #[error("the {what} has the character {character:?} at place {place}")]
+    Unprintable {
+        /// Which text.
+        what: String,
+        /// The character.
+        character: char,
+        /// Its place, counted from one.
+        place: usize,
+    },
     /// A text cannot be a name.
     #[error(transparent)]
     Name(#[from] NameError),
@@ -74,6 +84,8 @@ pub enum ModelError {
         place: String,
         /// The nearest declared name.
         nearest: Option<String>,
+        /// Every declared name.
+        declared: Vec<Name>,
     },
     /// An undetermined function with arguments other than declared.
     #[error("{place} has `{given:?}`, but the function is declared as `{declared:?}`")]
@@ -222,6 +234,7 @@ impl ModelError {
             }
             Self::EmptyAssumption => "say in words what is assumed".into(),
             Self::TooLong { .. } => "shorten it; longer explanations belong into a text cell".into(),
+            Self::Unprintable { .. } => "write it on one line, in letters, digits and signs".into(),
             Self::Name(error) => error.hint().into(),
             Self::Taken { name, .. } => {
                 format!(
@@ -231,9 +244,14 @@ impl ModelError {
             Self::Reserved { name, .. } => format!("choose another name, for example `{name}_1`"),
             Self::Unit { source, .. } => source.hint(),
             Self::Components { .. } => "give exactly three components: vector(x, y, z)".into(),
-            Self::Undeclared { nearest, .. } => meant(
+            Self::Undeclared {
+                nearest, declared, ..
+            } => meant(
                 nearest,
-                "declare it before it is used: sheet.coordinate(name, unit, meaning), sheet.constant(name, unit, meaning)",
+                &format!(
+                    "declare it before it is used, as in sheet.coordinate(name, unit, meaning); declared so far: {}",
+                    listed(declared)
+                ),
             ),
             Self::OtherArguments { .. } => "use the value that the declaration returned".into(),
             Self::Undefined { part, .. } => format!("look at `{part:?}`"),
@@ -275,4 +293,12 @@ impl ModelError {
             }
         }
     }
+}
+
+/// The first dozen names, separated by commas.
+fn listed(names: &[Name]) -> String {
+    const MOST: usize = 12;
+    let shown: Vec<&str> = names.iter().take(MOST).map(|name| name.as_str()).collect();
+    let rest = if names.len() > MOST { ", ..." } else { "" };
+    format!("{}{rest}", shown.join(", "))
 }

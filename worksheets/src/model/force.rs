@@ -30,7 +30,7 @@ pub enum ForceKind {
     },
     /// A linear spring: `stiffness (length - rest_length)`, pulling its ends together.
     Spring {
-        /// The two ends.
+        /// What it joins.
         ends: [End; 2],
         /// The stiffness.
         stiffness: Expr,
@@ -41,7 +41,7 @@ pub enum ForceKind {
     },
     /// A linear damper: `coefficient` times the rate of its length, resisting it.
     Damper {
-        /// The two ends.
+        /// What it joins.
         ends: [End; 2],
         /// The damping coefficient.
         coefficient: Expr,

@@ -6,15 +6,15 @@
 /// distances go to the name that comes first.
 pub(crate) fn nearest_of(given: &str, known: impl IntoIterator<Item = String>) -> Option<String> {
     let allowed = match given.chars().count() {
-        0 | 1 => 1,
-        2..=3 => 1,
+        0 | 1 => 0,
+        2 | 3 => 1,
         4..=7 => 2,
         _ => 3,
     };
     known
         .into_iter()
         .map(|name| (distance(given, &name), name))
-        .filter(|(distance, name)| *distance <= allowed && *distance < name.chars().count().max(2))
+        .filter(|(distance, name)| *distance <= allowed && *distance < name.chars().count())
         .min_by_key(|(distance, _)| *distance)
         .map(|(_, name)| name)
 }
@@ -54,6 +54,12 @@ mod tests {
         assert_eq!(nearest_of("contianer", known()).as_deref(), Some("container"));
         assert_eq!(nearest_of("girder", known()), None);
         assert_eq!(nearest_of("", known()), None);
+        assert_eq!(
+            nearest_of("x", ["m".to_owned()]),
+            None,
+            "any letter is near any other"
+        );
+        assert_eq!(nearest_of("M", ["m".to_owned()]).as_deref(), Some("m"));
         assert_eq!(nearest_of(&"x".repeat(10_000), known()), None);
     }
 

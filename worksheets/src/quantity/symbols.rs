@@ -38,7 +38,7 @@ const UNITS: &[Row] = &[
     ("%", false, [0, 0, 0], || decimal("1/100")),
     ("10*", false, [0, 0, 0], || decimal("10")),
     ("10^", false, [0, 0, 0], || decimal("10")),
-    ("[pi]", true, [0, 0, 0], cas::pi),
+    ("[pi]", false, [0, 0, 0], cas::pi),
     ("[g]", true, [0, 1, -2], || decimal("9.80665")),
     ("[in_i]", false, [0, 1, 0], || decimal("0.0254")),
     ("[ft_i]", false, [0, 1, 0], || decimal("0.3048")),
@@ -70,6 +70,11 @@ const PREFIXES: &[(&str, &str)] = &[
     ("a", "1e-18"),
     ("z", "1e-21"),
     ("y", "1e-24"),
+];
+
+/// Units that UCUM has and that mass, length and time do not make up.
+const OUTSIDE_MECHANICS: &[&str] = &[
+    "K", "Cel", "A", "V", "C", "Ohm", "S", "F", "Wb", "T", "H", "mol", "cd", "lm", "lx", "B", "kat", "[degF]",
 ];
 
 /// Words and abbreviations often written, and the code meant.
@@ -126,6 +131,16 @@ pub(super) fn unit(symbol: &str) -> Option<(Dimension, Expr)> {
         let (dimension, factor) = value(row);
         Some((dimension, decimal(power) * factor))
     })
+}
+
+/// Whether the symbol is a unit of UCUM, with or without a prefix, that mechanics has no use for.
+pub(super) fn is_outside_mechanics(symbol: &str) -> bool {
+    OUTSIDE_MECHANICS.contains(&symbol)
+        || PREFIXES.iter().any(|(prefix, _)| {
+            symbol
+                .strip_prefix(prefix)
+                .is_some_and(|rest| OUTSIDE_MECHANICS.contains(&rest))
+        })
 }
 
 /// The code that this symbol was probably meant to be.

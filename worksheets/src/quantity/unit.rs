@@ -240,13 +240,23 @@ impl<'a> Reader<'a> {
 
     fn annotatable(&mut self) -> Result<(Dimension, Expr), UnitError> {
         let text = self.symbol()?;
-        let (dimension, factor) = symbols::unit(text).ok_or_else(|| UnitError::Unknown {
-            code: self.code.to_owned(),
-            part: text.to_owned(),
-            suggestion: symbols::nearest(text),
-        })?;
+        let (dimension, factor) = symbols::unit(text).ok_or_else(|| self.unknown(text))?;
         let exponent = self.exponent()?;
         Ok((dimension.power(&exponent), factor.power(exponent)))
+    }
+
+    fn unknown(&self, part: &str) -> UnitError {
+        let (code, part) = (self.code.to_owned(), part.to_owned());
+        let suggestion = symbols::nearest(&part);
+        if symbols::is_outside_mechanics(&part) {
+            UnitError::OutsideMechanics { code, part }
+        } else {
+            UnitError::Unknown {
+                code,
+                part,
+                suggestion,
+            }
+        }
     }
 
     /// A unit's symbol: letters, a bracketed name, `10*`, `%`, or primes for minutes and seconds of arc.
@@ -411,6 +421,12 @@ mod tests {
             "99999999999999999999.m",
         ] {
             assert!(Unit::read(code).is_err(), "{code:?} was read");
+        }
+        for code in ["K", "mA", "N/K"] {
+            assert!(matches!(
+                Unit::read(code),
+                Err(UnitError::OutsideMechanics { .. })
+            ));
         }
         assert!(matches!(
             Unit::read(&format!("{}m{}", "(".repeat(17), ")".repeat(17))),

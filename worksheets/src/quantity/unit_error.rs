@@ -39,6 +39,14 @@ pub enum UnitError {
         /// The known code nearest to it.
         suggestion: Option<String>,
     },
+    /// A unit of electricity, heat, light or chemistry.
+    #[error("`{code}` is no unit of mechanics: `{part}` is not made up of mass, length and time")]
+    OutsideMechanics {
+        /// The text as given.
+        code: String,
+        /// The part that is of another trade.
+        part: String,
+    },
     /// A character stands where none like it may stand.
     #[error("`{code}` is no unit: the character `{character}` at place {place} does not belong there")]
     Unexpected {
@@ -87,6 +95,10 @@ impl UnitError {
                 suggestion: Some(suggestion),
                 ..
             } => format!("write \"{suggestion}\""),
+            Self::OutsideMechanics { .. } => {
+                "state the mechanical quantity that it acts by, such as a force in \"N\" or a torque in \"N.m\""
+                    .to_owned()
+            }
             Self::TooLong { .. } | Self::TooDeep { .. } => "shorten the unit".to_owned(),
             Self::Exponent { .. } | Self::Number { .. } => "write a smaller number, and no zero".to_owned(),
             Self::Unknown { .. } | Self::Unexpected { .. } | Self::Incomplete { .. } => FORM.to_owned(),

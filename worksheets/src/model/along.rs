@@ -1,0 +1,117 @@
+//! Unit vectors and distances between the ends of springs, dampers and links.
+
+use cas::{Expr, Kind, Name, sqrt};
+
+use super::Model;
+use super::body::{End, EndChoice};
+use super::check::Allowed;
+use super::condition::Condition;
+use super::declared::Role;
+use super::error::ModelError;
+use super::force::Load;
+use super::vector::Vector;
+use crate::quantity::Dimension;
+
+/// A unit vector, the length of the vector that it was made from, and what must hold for both.
+pub(super) struct Along {
+    pub(super) unit: Vector,
+    pub(super) length: Expr,
+    pub(super) conditions: Vec<Condition>,
+}
+
+impl Model {
+    /// The unit vector along `vector`.
+    ///
+    /// Where the square of the length is the square of a monomial, as `r^2` or `4 l^2 s^2`, the
+    /// length is that monomial under the condition that it is above zero; otherwise it is a root.
+    pub(super) fn along(&self, name: Name, vector: Vector) -> Result<Along, ModelError> {
+        let squared = vector.dot(vector);
+        if squared.is_zero() {
+            return Err(ModelError::ZeroDirection { name });
+        }
+        let (length, conditions) = self
+            .monomial_root(squared)
+            .unwrap_or_else(|| match squared.as_number() {
+                Some(_) => (sqrt(squared), Vec::new()),
+                None => (sqrt(squared), vec![Condition::NotZero(squared)]),
+            });
+        let unit = if length.is_one() { vector } else { vector / length };
+        Ok(Along {
+            unit,
+            length,
+            conditions,
+        })
+    }
+
+    /// The root of a number times even powers, and the conditions under which it is above zero.
+    fn monomial_root(&self, square: Expr) -> Option<(Expr, Vec<Condition>)> {
+        let (coefficient, rest) = square.coefficient_and_rest();
+        let mut root = Expr::number(coefficient.exact_root(2)?);
+        let (mut signed, mut conditions) = (Expr::one(), Vec::new());
+        for factor in rest.factors().into_iter().filter(|factor| !factor.is_one()) {
+            let Kind::Power(base, exponent) = factor.kind() else {
+                return None;
+            };
+            let half = exponent.as_integer().filter(|exponent| exponent % 2 == 0)? / 2;
+            root *= base.power(half);
+            if self.is_positive_constant(*base) {
+                continue;
+            }
+            if half % 2 == 0 {
+                conditions.push(Condition::NotZero(*base));
+            } else {
+                signed *= *base;
+            }
+        }
+        if !signed.is_one() {
+            conditions.insert(0, Condition::Positive(signed));
+        }
+        Some((root, conditions))
+    }
+
+    fn is_positive_constant(&self, expr: Expr) -> bool {
+        expr.as_symbol()
+            .filter(|symbol| symbol.primes() == 0)
+            .and_then(|symbol| self.quantity(symbol.name()))
+            .is_some_and(|declared| declared.role == Role::PositiveConstant)
+    }
+
+    /// The two ends that the statement of `name` chose.
+    pub(super) fn ends(&self, name: Name, chosen: [EndChoice; 2]) -> Result<[End; 2], ModelError> {
+        let [a, b] = chosen;
+        let ends = [self.end(name, a)?, self.end(name, b)?];
+        if ends.iter().all(|end| matches!(end, End::Point(_))) {
+            return Err(ModelError::NoParticleAtEnds { name });
+        }
+        if ends[0].position() == ends[1].position() {
+            return Err(ModelError::SameEnds { name });
+        }
+        Ok(ends)
+    }
+
+    fn end(&self, name: Name, choice: EndChoice) -> Result<End, ModelError> {
+        match choice {
+            EndChoice::Particle(particle) => Ok(End::Particle(self.particles[self.place_of(&particle)?])),
+            EndChoice::Point(point) => {
+                // A point that moved with the coordinates would pass its force on to nothing.
+                let place = format!("the end point of `{name}`");
+                self.check_vector(point, &place, Allowed::PRESCRIBED, &Dimension::LENGTH)?;
+                Ok(End::Point(point))
+            }
+        }
+    }
+
+    /// `vector` on the particle at the first end and its opposite on that at the second.
+    pub(super) fn opposite_loads(&self, ends: [End; 2], vector: Vector) -> Vec<Load> {
+        let mut loads = Vec::new();
+        for (end, vector) in ends.into_iter().zip([vector, -vector]) {
+            let place = self
+                .particles
+                .iter()
+                .position(|known| matches!(end, End::Particle(particle) if *known == particle));
+            loads.extend(place.map(|particle| Load { particle, vector }));
+        }
+        loads.sort_by_key(|load| load.particle);
+        loads
+    }
+}
