@@ -5,4 +5,5 @@ pub mod model;
 pub mod prelude;
 pub mod quantity;
 pub mod sheet;
+pub mod show;
 pub mod stop;
