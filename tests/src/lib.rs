@@ -1,1 +1,4 @@
-//! Checks across crates and against published results.
+//! Checks across crates and against published results; this library holds what several of them need.
+#![forbid(unsafe_code)]
+
+pub mod repository;
