@@ -12,12 +12,17 @@
       try {
         w.katex.render(tex.textContent, target, { displayMode: target.tagName === 'DIV', fleqn: true });
         target.gudgeon = true;
+        if (target.firstChild.className === 'katex-display fleqn') target.firstChild.style.margin = '0.3em 0';
       } catch (_) {}
     });
   }
   function fallBack() {
     each(function (target, mathml) {
-      if (/^\s*\$/.test(target.textContent)) { target.innerHTML = mathml; target.gudgeon = true; }
+      if (/^\s*\$/.test(target.textContent)) {
+        target.innerHTML = mathml;
+        target.gudgeon = true;
+        target.firstChild.style.fontFamily = "'Latin Modern Math','STIX Two Math','Cambria Math','DejaVu Math TeX Gyre',math";
+      }
     });
   }
   function later() { setTimeout(fallBack, 1500); }
