@@ -14,6 +14,7 @@ mod sources;
 mod template;
 
 pub use data_folder::DataFolder;
+pub(crate) use sources::GALLERY;
 pub use sources::content_hash;
 pub(crate) use template::build_in_this_process;
 
@@ -37,7 +38,7 @@ impl Library {
     /// # Errors
     /// When the compiler cannot be asked for its version.
     pub fn find(data: &DataFolder) -> Result<Option<Library>, Error> {
-        let folder = data.libraries().join(content_hash()?);
+        let folder = data.libraries().join(content_hash(data)?);
         Ok(folder.join(STAMP).is_file().then_some(Library { folder }))
     }
 
@@ -58,9 +59,9 @@ impl Library {
         if let Some(ready) = Self::find(data)? {
             return Ok(ready);
         }
-        let hash = content_hash()?;
+        let hash = content_hash(data)?;
         let folder = data.libraries().join(&hash);
-        remove_others(&data.libraries(), &hash);
+        remove_unused(&data.libraries(), Some(&hash));
         if folder.exists() {
             fs::remove_dir_all(&folder).map_err(|cause| Error::Unwritable {
                 path: folder.clone(),
@@ -74,6 +75,18 @@ impl Library {
         template::build(&library, progress)?;
         write(&library.folder.join(STAMP), b"")?;
         Ok(library)
+    }
+
+    /// Removes every library that no session uses, and says how many there were.
+    ///
+    /// # Errors
+    /// When the data folder cannot be locked.
+    pub fn remove_all(data: &DataFolder) -> Result<usize, Error> {
+        let _held = data.lock("library.lock", || ())?;
+        let removed = remove_unused(&data.libraries(), None);
+        // Succeeds only if nothing is left in it.
+        let _ = fs::remove_dir(data.libraries());
+        Ok(removed)
     }
 
     /// The folder of the workspace with the crates `cas` and `worksheets`.
@@ -109,17 +122,22 @@ impl Library {
     }
 }
 
-/// Removes libraries of older contents, unless a session still builds against them.
-fn remove_others(libraries: &Path, keep: &str) {
+/// Removes libraries that no session builds against, except the one to keep, and counts them.
+fn remove_unused(libraries: &Path, keep: Option<&str>) -> usize {
     let Ok(entries) = fs::read_dir(libraries) else {
-        return;
+        return 0;
     };
+    let mut removed = 0;
     for entry in entries.flatten() {
+        if keep.is_some_and(|keep| entry.file_name() == keep) {
+            continue;
+        }
         let in_use = File::open(entry.path().join(STAMP)).is_ok_and(|stamp| stamp.try_lock().is_err());
-        if entry.file_name() != keep && !in_use {
-            let _ = fs::remove_dir_all(entry.path());
+        if !in_use && fs::remove_dir_all(entry.path()).is_ok() {
+            removed += 1;
         }
     }
+    removed
 }
 
 /// Writes a file and the folders above it.

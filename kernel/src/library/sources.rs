@@ -1,5 +1,6 @@
 //! The embedded sources of the helper library, and the manifests with which cells are built against them.
 
+use super::DataFolder;
 use crate::error::Error;
 use sha2::{Digest, Sha256};
 use std::fmt::Write as _;
@@ -18,12 +19,14 @@ const CRATES: [&str; 2] = ["cas", "worksheets"];
 /// The name of a library's folder: a hash of the sources, the layout, the prelude and the compiler.
 ///
 /// The compiler belongs to it because a dynamic library of Rust fits only the compiler that built it.
+/// It is asked from the data folder, where cells are built: a toolchain file beside a worksheet has no say there.
 ///
 /// # Errors
 /// When `rustc` cannot be run.
-pub fn content_hash() -> Result<String, Error> {
+pub fn content_hash(data: &DataFolder) -> Result<String, Error> {
     let compiler = Command::new("rustc")
         .arg("-vV")
+        .current_dir(data.path())
         .output()
         .map_err(|cause| Error::ProgramMissing {
             program: "rustc".to_owned(),

@@ -14,6 +14,16 @@ use std::fs::{self, File};
 use std::path::{Path, PathBuf};
 use toml::{Table, Value};
 
+/// Packages that only run inside the compiler: optimising them costs more than it saves.
+const COMPILE_TIME_ONLY: [&str; 6] = [
+    "proc-macro2",
+    "quote",
+    "serde_derive",
+    "syn",
+    "thiserror-impl",
+    "unicode-ident",
+];
+
 /// A folder that goes away when it is dropped.
 #[derive(Debug)]
 pub struct SessionFolder {
@@ -109,7 +119,12 @@ impl SessionFolder {
 
         let crates_io = table([("replace-with", Value::String("vendored".to_owned()))]);
         let vendored = table([("directory", text(&library.vendored()))]);
-        let optimised = table([("*", table([("opt-level", Value::Integer(2))]))]);
+        let level = |level| table([("opt-level", Value::Integer(level))]);
+        let mut packages = Table::new();
+        packages.insert("*".to_owned(), level(2));
+        for name in COMPILE_TIME_ONLY {
+            packages.insert(name.to_owned(), level(0));
+        }
         let mut cargo = Table::new();
         cargo.insert("net".to_owned(), table([("offline", Value::Boolean(true))]));
         cargo.insert(
@@ -118,7 +133,7 @@ impl SessionFolder {
         );
         cargo.insert(
             "profile".to_owned(),
-            table([("dev", table([("package", optimised)]))]),
+            table([("dev", table([("package", Value::Table(packages))]))]),
         );
         write_toml(&self.path.join(".cargo/config.toml"), &cargo)
     }
