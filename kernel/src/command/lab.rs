@@ -168,7 +168,7 @@ mod tests {
         let missing = folder.path().join("b.ipynb");
         fs::write(&mine, "mine").unwrap();
         let written = write_missing(&files, folder.path()).unwrap();
-        assert_eq!(written, [missing.clone()]);
+        assert_eq!(written, std::slice::from_ref(&missing));
         assert_eq!(fs::read(&mine).unwrap(), b"mine");
         assert_eq!(fs::read(&missing).unwrap(), b"ours");
     }
