@@ -85,12 +85,14 @@ macro_rules! operator {
             }
         }
         // Never usable: the bound makes the compiler say why, in our words. `for<'never>` keeps the
-        // compiler from refusing the impl itself.
+        // compiler from refusing the impl itself. `#[inline]` because no code is made for them, and
+        // a dynamic library would list them among the functions that it has.
         impl $operator<f64> for Expr
         where
             for<'never> DecimalNumber: Exact,
         {
             type Output = Expr;
+            #[inline]
             fn $method(self, _: f64) -> Expr {
                 self
             }
@@ -100,6 +102,7 @@ macro_rules! operator {
             for<'never> DecimalNumber: Exact,
         {
             type Output = Expr;
+            #[inline]
             fn $method(self, other: Expr) -> Expr {
                 other
             }
