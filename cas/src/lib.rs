@@ -4,8 +4,10 @@
 //! number outside one module.
 #![forbid(unsafe_code)]
 
+pub mod calculus;
 pub mod effort;
 pub mod expr;
+pub mod matrix;
 pub mod number;
 
 pub use effort::{Effort, Limit};

@@ -1,0 +1,5 @@
+//! Exact matrices of expressions: shape, products, and what can be said of their rank.
+
+mod shape;
+
+pub use shape::{Matrix, MatrixError};
