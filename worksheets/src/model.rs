@@ -30,6 +30,7 @@ pub use vector::{Vector, vector};
 
 use std::collections::BTreeSet;
 
+use cas::calculus::Rates;
 use cas::{Expr, Name, Symbol};
 
 /// Everything that was stated on a sheet.
@@ -109,6 +110,13 @@ impl Model {
             .iter()
             .flat_map(|particle| particle.position.components())
             .collect()
+    }
+
+    /// The rate of change of every symbol that changes with time: 1 for time itself, the velocity
+    /// for a coordinate, the acceleration for a velocity.
+    #[must_use]
+    pub fn rates(&self) -> Rates {
+        Rates::primed(&self.coordinates(), 2).with(self.time(), 1)
     }
 
     /// Refuses a model from which nothing can be derived.

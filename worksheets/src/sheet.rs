@@ -71,6 +71,12 @@ impl Sheet {
         self.model.time().into()
     }
 
+    /// See [`Model::rate`].
+    #[must_use]
+    pub fn rate(&self, of: Expr) -> Expr {
+        unless(self.model.rate(of))
+    }
+
     /// See [`Model::particle`].
     pub fn particle(&mut self, name: &str, mass: impl IntoExpr, position: Vector) -> Particle {
         unless(self.model.particle(name, mass, position))
@@ -96,6 +102,17 @@ impl Sheet {
         rest_length: impl IntoExpr,
     ) {
         unless(self.model.spring(name, a, b, stiffness, rest_length));
+    }
+
+    /// See [`Model::damper`].
+    pub fn damper(
+        &mut self,
+        name: &str,
+        a: impl Into<EndChoice>,
+        b: impl Into<EndChoice>,
+        coefficient: impl IntoExpr,
+    ) {
+        unless(self.model.damper(name, a, b, coefficient));
     }
 
     /// See [`Model::normal`].

@@ -37,6 +37,7 @@ advised!(
     cas::NumberError,
     cas::NameError,
     cas::Limit,
+    cas::calculus::CalculusError,
 );
 
 /// The value, or the end of the cell.

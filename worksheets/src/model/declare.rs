@@ -1,5 +1,6 @@
 //! Declaring quantities, particles and assumptions.
 
+use cas::calculus::total_derivative;
 use cas::{Expr, IntoExpr, Name, Symbol};
 
 use super::assumption::{Assumption, Origin};
@@ -141,6 +142,19 @@ impl Model {
             count: components.len(),
         })?;
         self.particle(name, mass, Vector::new(position))
+    }
+
+    /// The rate of change of an expression: `x'` of a coordinate `x`.
+    ///
+    /// # Errors
+    /// As for an expression in a force: undeclared symbols, accelerations, no value.
+    pub fn rate(&self, of: Expr) -> Result<Expr, ModelError> {
+        let place = "the expression whose rate is asked for";
+        self.check(of, place, Allowed::FORCE, None)?;
+        total_derivative(of, &self.rates()).map_err(|source| ModelError::Derivative {
+            place: place.to_owned(),
+            source,
+        })
     }
 
     /// An assumption in words and the names that it affects.

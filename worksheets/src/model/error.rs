@@ -1,5 +1,6 @@
 //! Everything that can be wrong with a model, each named with the offending thing and the next step.
 
+use cas::calculus::CalculusError;
 use cas::{Expr, Name, NameError};
 
 use crate::quantity::{Dimension, DimensionError, UnitError};
@@ -141,6 +142,14 @@ pub enum ModelError {
         /// What to do instead.
         remedy: &'static str,
     },
+    /// An expression has no derivative.
+    #[error("{place}: {source}")]
+    Derivative {
+        /// Where it stands.
+        place: String,
+        /// Why not.
+        source: CalculusError,
+    },
     /// A mass that is zero or below.
     #[error("the mass of the particle `{name}` is {mass:?}, which is not above zero")]
     MassNotPositive {
@@ -261,6 +270,7 @@ impl ModelError {
                 expected.coherent_unit()
             ),
             Self::NotAllowed { remedy, .. } => (*remedy).into(),
+            Self::Derivative { source, .. } => source.hint().into(),
             Self::MassNotPositive { .. } => {
                 "a particle needs a mass above zero; a massless part is a link or a spring".into()
             }

@@ -5,6 +5,7 @@ use cas::IntoExpr;
 use super::Model;
 use super::body::{EndChoice, ParticleChoice};
 use super::check::Allowed;
+use super::condition::Condition;
 use super::error::ModelError;
 use super::force::{Force, ForceKind, Load};
 use super::vector::Vector;
@@ -122,6 +123,40 @@ impl Model {
             },
             loads: self.opposite_loads(ends, vector),
             conditions,
+        });
+        Ok(())
+    }
+
+    /// A linear damper between two ends.
+    ///
+    /// With `d` from `a` to `b` the force on `a` is `coefficient (d.d')/(d.d) d`: the coefficient
+    /// times the rate of the length, along the damper. No root occurs.
+    ///
+    /// # Errors
+    /// As [`Model::spring`].
+    pub fn damper(
+        &mut self,
+        name: &str,
+        a: impl Into<EndChoice>,
+        b: impl Into<EndChoice>,
+        coefficient: impl IntoExpr,
+    ) -> Result<(), ModelError> {
+        let name = self.free_name(name)?;
+        let ends = self.ends(name, [a.into(), b.into()])?;
+        let coefficient = coefficient.into_expr();
+        let place = format!("the coefficient of `{name}`");
+        let expected = Dimension::new(1, 0, -1);
+        self.check(coefficient, &place, Allowed::PRESCRIBED, Some(&expected))?;
+        let difference = ends[1].position() - ends[0].position();
+        let [x, y, z] = difference.components().map(|component| self.rate(component));
+        let rate = Vector::new([x?, y?, z?]);
+        let squared = difference.dot(difference);
+        let tension_over_length = coefficient * difference.dot(rate) / squared;
+        self.forces.push(Force {
+            name,
+            kind: ForceKind::Damper { ends, coefficient },
+            loads: self.opposite_loads(ends, tension_over_length * difference),
+            conditions: vec![Condition::NotZero(squared)],
         });
         Ok(())
     }

@@ -1,6 +1,6 @@
 //! What the model holds, and that every bad statement is refused with its name and the next step.
 
-use cas::{Expr, cos, exact, sin, sqrt};
+use cas::{Expr, Name, cos, exact, sin, sqrt};
 
 use super::*;
 
@@ -56,6 +56,10 @@ fn what_was_stated_is_held_in_order() {
     assert_eq!(model.forces()[0].on(1), vector(0, 0, -2 * symbol("m") * g));
     assert_eq!(model.assumptions()[0].number(), 1);
     assert_eq!(model.require_complete(), Ok(()));
+    assert_eq!(model.rate(force).expect("valid"), {
+        let name = Name::new("F").expect("valid");
+        Expr::unknown_derivative(name, &[1], &[model.time().into()])
+    });
 }
 
 #[test]
@@ -91,6 +95,19 @@ fn a_spring_of_no_rest_length_needs_no_condition() {
     model.spring("soft", cart, vector(0, 0, 0), k, 0).expect("valid");
     assert_eq!(model.forces()[0].on(0), vector(-k * x, 0, 0));
     assert!(model.forces()[0].conditions().is_empty());
+}
+
+#[test]
+fn a_damper_resists_its_rate() {
+    let (mut model, cart, x) = cart();
+    let c = model.constant("c", "N.s/m", "damping").expect("valid");
+    model.damper("pot", vector(0, 0, 0), cart, c).expect("valid");
+    let velocity = Expr::from(x.as_symbol().expect("a symbol").primed());
+    let at = cas::Substitution::new([(x, 2.into()), (velocity, 5.into())]);
+    let on_cart = model.forces()[0]
+        .on(0)
+        .map(|component| component.substituted(&at));
+    assert_eq!(on_cart, vector(-5 * c, 0, 0));
 }
 
 #[test]
@@ -146,6 +163,153 @@ fn names_are_unique_and_units_are_units() {
 }
 
 #[test]
+fn positions_are_checked() {
+    let (mut model, _, x) = cart();
+    let m = symbol("m");
+    let velocity = Expr::from(x.as_symbol().expect("a symbol").primed());
+    refused(
+        model.particle("b", m, vector(symbol("y"), 0, 0)),
+        "`y`",
+        "declared so far: t, m, x",
+    );
+    refused(
+        model.particle("b", m, vector(symbol("theta"), 0, 0)),
+        "`theta`",
+        "sheet.coordinate",
+    );
+    refused(
+        model.particle("b", m, vector(0, x / 0, 0)),
+        "component y",
+        "look at",
+    );
+    refused(
+        model.particle("b", m, vector(0, x + m, 0)),
+        "the sum",
+        "factor is missing",
+    );
+    refused(
+        model.particle("b", m, vector(0, sin(x), 0)),
+        "the argument of",
+        "divide",
+    );
+    refused(
+        model.particle("b", m, vector(0, 0, x * x)),
+        "must be in m",
+        "units",
+    );
+    refused(
+        model.particle("b", m, vector(velocity * 1, 0, 0)),
+        "the velocity",
+        "coordinates",
+    );
+    refused(
+        model.particle("b", x, vector(x, 0, 0)),
+        "the coordinate",
+        "constants",
+    );
+    refused(
+        model.particle("b", 0, vector(x, 0, 0)),
+        "not above zero",
+        "massless",
+    );
+    refused(
+        model.particle("b", -2, vector(x, 0, 0)),
+        "the mass of the particle `b`",
+        "massless",
+    );
+    refused(
+        model.particle("b", 2, vector(x, 0, 0)),
+        "must be in kg",
+        "declaring it as a constant",
+    );
+    refused(
+        model.particle_from("b", m, &[x, x]),
+        "2 components",
+        "vector(x, y, z)",
+    );
+    refused(
+        model.particle_from("b", m, &[x; 4]),
+        "4 components",
+        "vector(x, y, z)",
+    );
+    assert_eq!(model.particles().len(), 1);
+}
+
+#[test]
+fn forces_find_their_particles() {
+    let (mut model, cart, x) = cart();
+    let (mut other, stranger, _) = self::cart();
+    let force = model.input("F", "N", "drive").expect("valid");
+    let b = other.constant("b", "m", "offset").expect("valid");
+    let away = other
+        .particle("far", symbol("m"), vector(b, 0, 0))
+        .expect("valid");
+    model
+        .force("same", stranger, vector(force, 0, 0))
+        .expect("a particle equal in name and content");
+    refused(
+        model.force("f", away, vector(force, 0, 0)),
+        "`far`",
+        "sheet.particle",
+    );
+    refused(model.force("f", "crt", vector(force, 0, 0)), "`crt`", "`cart`");
+    let changed = Particle {
+        mass: 3 * symbol("m"),
+        ..cart
+    };
+    refused(
+        model.force("f", changed, vector(force, 0, 0)),
+        "another sheet",
+        "this sheet's",
+    );
+    refused(model.force("f", cart, vector(x, 0, 0)), "must be in N", "units");
+    let acceleration = Expr::from(x.as_symbol().expect("a symbol").with_primes(2));
+    refused(
+        model.force("f", cart, vector(symbol("m") * acceleration, 0, 0)),
+        "the acceleration",
+        "inertia",
+    );
+    let push = model.normal("rail", cart, vector(0, 0, 1)).expect("valid");
+    refused(
+        model.force("f", cart, vector(-push / 5, 0, 0)),
+        "the reaction",
+        "unknown",
+    );
+    refused(
+        model.force("f", cart, vector(symbol("F"), 0, 0)),
+        "the function is declared as",
+        "declaration returned",
+    );
+}
+
+#[test]
+fn ends_are_checked() {
+    let (mut model, cart, x) = cart();
+    refused(model.link("rod", cart, cart), "same place", "two different");
+    refused(
+        model.link("rod", cart, vector(x, 0, 0)),
+        "the coordinate",
+        "attach it to a particle",
+    );
+    refused(
+        model.link("rod", vector(0, 0, 0), vector(0, 0, 0)),
+        "no end",
+        "at least one",
+    );
+    refused(
+        model.normal("rail", cart, vector(0, 0, 0)),
+        "zero vector",
+        "vector(0, 0, 1)",
+    );
+    refused(
+        model.spring("s", cart, vector(0, 0, 0), x, 0),
+        "the coordinate",
+        "attach",
+    );
+    assert!(model.forces().is_empty() && model.reactions().is_empty());
+}
+
+#[test]
 fn assumptions_affect_what_exists() {
     let (mut model, ..) = cart();
     refused(model.assume("rigid", &["crat"]), "`crat`", "`cart`");
@@ -167,6 +331,30 @@ fn incomplete_models_say_what_is_missing() {
         .particle("moved", m, vector(q[0], q[1], q[2]))
         .expect("valid");
     refused(model.require_complete(), "`q4`", "use `q4`");
+}
+
+#[test]
+fn functions_of_coordinates_have_units_for_their_derivatives() {
+    let (mut model, cart, x) = cart();
+    let potential = model
+        .function("U", "J", &[x], "potential of the field")
+        .expect("valid");
+    let slope = cas::calculus::derivative(potential, x).expect("valid");
+    model
+        .force("field", cart, vector(-slope, 0, 0))
+        .expect("J/m is N");
+    refused(
+        model.force("f", cart, vector(potential, 0, 0)),
+        "must be in N",
+        "units",
+    );
+    let elsewhere = Expr::unknown(Name::new("U").expect("valid"), &[2 * x]);
+    refused(model.dimension(elsewhere), "declared as", "returned");
+    refused(
+        model.function("V", "J", &[2 * x], "no"),
+        "more than a symbol",
+        "symbols",
+    );
 }
 
 #[test]

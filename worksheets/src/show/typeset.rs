@@ -110,7 +110,10 @@ mod tests {
         let made = mathml("\\ddot{x} = \\frac{F}{m}", true).expect("accepted");
         assert!(made.starts_with("<math") && made.ends_with("</math>"), "{made}");
         assert!(made.contains("<mfrac>") && made.contains("application/x-tex"));
-        assert!(made.contains("<mover><mi>x</mi>"), "the dots stand above the letter");
+        assert!(
+            made.contains("<mover><mi>x</mi>"),
+            "the dots stand above the letter"
+        );
     }
 
     #[test]
