@@ -19,7 +19,7 @@ fn every_source_file_says_what_it_is_for() -> Result<()> {
         .iter()
         .filter(|(_, text)| {
             let words = text.lines().next().and_then(|line| line.strip_prefix("//! "));
-            !words.is_some_and(|words| words.trim().len() > 10)
+            words.is_none_or(|words| words.trim().len() <= 10)
         })
         .map(|(file, _)| file.display().to_string())
         .collect::<Vec<_>>();

@@ -1,0 +1,19 @@
+//! Derived equations, accelerations and reactions against published ones.
+
+use tests::published::all;
+
+#[test]
+fn every_system_is_stated_completely() {
+    let systems = all();
+    assert!(systems.len() >= 18, "only {} systems", systems.len());
+    for system in systems {
+        let model = system.sheet.model();
+        model
+            .require_complete()
+            .unwrap_or_else(|error| panic!("{}: {error}", system.source));
+        let coordinates = model.coordinates().len();
+        for probe in &system.probes {
+            assert_eq!(probe.accelerations.len(), coordinates, "{}", system.source);
+        }
+    }
+}
