@@ -17,6 +17,7 @@ mod declared;
 mod error;
 mod force;
 mod forces;
+mod length;
 mod reactions;
 mod vector;
 

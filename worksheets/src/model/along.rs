@@ -1,6 +1,6 @@
 //! Unit vectors and distances between the ends of springs, dampers and links.
 
-use cas::{Expr, Kind, Name, sqrt};
+use cas::{Expr, Name, sqrt};
 
 use super::Model;
 use super::body::{End, EndChoice};
@@ -9,6 +9,7 @@ use super::condition::Condition;
 use super::declared::Role;
 use super::error::ModelError;
 use super::force::Load;
+use super::length::{Powers, divided, even_powers, squared_length};
 use super::vector::Vector;
 use crate::quantity::Dimension;
 
@@ -16,6 +17,8 @@ use crate::quantity::Dimension;
 pub(super) struct Along {
     pub(super) unit: Vector,
     pub(super) length: Expr,
+    /// Whether the length is a product of powers and no root.
+    pub(super) monomial: bool,
     pub(super) conditions: Vec<Condition>,
 }
 
@@ -25,39 +28,39 @@ impl Model {
     /// Where the square of the length is the square of a monomial, as `r^2` or `4 l^2 s^2`, the
     /// length is that monomial under the condition that it is above zero; otherwise it is a root.
     pub(super) fn along(&self, name: Name, vector: Vector) -> Result<Along, ModelError> {
-        let squared = vector.dot(vector);
+        let squared = squared_length(vector);
         if squared.is_zero() {
             return Err(ModelError::ZeroDirection { name });
         }
-        let (length, conditions) = self
-            .monomial_root(squared)
-            .unwrap_or_else(|| match squared.as_number() {
-                Some(_) => (sqrt(squared), Vec::new()),
-                None => (sqrt(squared), vec![Condition::NotZero(squared)]),
+        let Some(factors) = even_powers(squared) else {
+            let conditions = match squared.as_number() {
+                Some(_) => Vec::new(),
+                None => vec![Condition::NotZero(squared)],
+            };
+            let length = sqrt(squared);
+            return Ok(Along {
+                unit: vector / length,
+                length,
+                monomial: false,
+                conditions,
             });
-        let unit = if length.is_one() { vector } else { vector / length };
+        };
         Ok(Along {
-            unit,
-            length,
-            conditions,
+            unit: vector.map(|component| divided(component, &factors)),
+            length: factors.product(),
+            monomial: true,
+            conditions: self.above_zero(&factors),
         })
     }
 
-    /// The root of a number times even powers, and the conditions under which it is above zero.
-    fn monomial_root(&self, square: Expr) -> Option<(Expr, Vec<Condition>)> {
-        let (coefficient, rest) = square.coefficient_and_rest();
-        let mut root = Expr::number(coefficient.exact_root(2)?);
+    /// The conditions under which a product of powers is above zero.
+    fn above_zero(&self, factors: &Powers) -> Vec<Condition> {
         let (mut signed, mut conditions) = (Expr::one(), Vec::new());
-        for factor in rest.factors().into_iter().filter(|factor| !factor.is_one()) {
-            let Kind::Power(base, exponent) = factor.kind() else {
-                return None;
-            };
-            let half = exponent.as_integer().filter(|exponent| exponent % 2 == 0)? / 2;
-            root *= base.power(half);
+        for (base, exponent) in &factors.powers {
             if self.is_positive_constant(*base) {
                 continue;
             }
-            if half % 2 == 0 {
+            if exponent % 2 == 0 {
                 conditions.push(Condition::NotZero(*base));
             } else {
                 signed *= *base;
@@ -66,7 +69,7 @@ impl Model {
         if !signed.is_one() {
             conditions.insert(0, Condition::Positive(signed));
         }
-        Some((root, conditions))
+        conditions
     }
 
     fn is_positive_constant(&self, expr: Expr) -> bool {

@@ -13,3 +13,13 @@ pub enum Condition {
     /// The expression is above zero.
     Positive(Expr),
 }
+
+impl Condition {
+    /// What is left of the condition where the sign does not matter.
+    pub(super) fn without_sign(self) -> Self {
+        match self {
+            Self::Positive(expr) => Self::NotZero(expr),
+            other => other,
+        }
+    }
+}

@@ -8,6 +8,7 @@ use super::check::Allowed;
 use super::condition::Condition;
 use super::error::ModelError;
 use super::force::{Force, ForceKind, Load};
+use super::length::squared_length;
 use super::vector::Vector;
 use crate::quantity::Dimension;
 
@@ -130,7 +131,8 @@ impl Model {
     /// A linear damper between two ends.
     ///
     /// With `d` from `a` to `b` the force on `a` is `coefficient (d.d')/(d.d) d`: the coefficient
-    /// times the rate of the length, along the damper. No root occurs.
+    /// times the rate of the length, along the damper. No root occurs; where the length is a
+    /// monomial, the same is written as its rate along the unit vector.
     ///
     /// # Errors
     /// As [`Model::spring`].
@@ -148,15 +150,23 @@ impl Model {
         let expected = Dimension::new(1, 0, -1);
         self.check(coefficient, &place, Allowed::PRESCRIBED, Some(&expected))?;
         let difference = ends[1].position() - ends[0].position();
-        let [x, y, z] = difference.components().map(|component| self.rate(component));
-        let rate = Vector::new([x?, y?, z?]);
-        let squared = difference.dot(difference);
-        let tension_over_length = coefficient * difference.dot(rate) / squared;
+        let along = self.along(name, difference)?;
+        let (vector, conditions) = if along.monomial {
+            // The sign of the length cancels, so it need only not be zero.
+            let conditions = along.conditions.into_iter().map(Condition::without_sign);
+            let tension = coefficient * self.rate(along.length)?;
+            (tension * along.unit, conditions.collect())
+        } else {
+            let [x, y, z] = difference.components().map(|component| self.rate(component));
+            let stretching = difference.dot(Vector::new([x?, y?, z?]));
+            let tension_over_length = coefficient * stretching / squared_length(difference);
+            (tension_over_length * difference, along.conditions)
+        };
         self.forces.push(Force {
             name,
             kind: ForceKind::Damper { ends, coefficient },
-            loads: self.opposite_loads(ends, tension_over_length * difference),
-            conditions: vec![Condition::NotZero(squared)],
+            loads: self.opposite_loads(ends, vector),
+            conditions,
         });
         Ok(())
     }

@@ -110,6 +110,61 @@ fn a_damper_resists_its_rate() {
     assert_eq!(on_cart, vector(-5 * c, 0, 0));
 }
 
+/// A carriage at distance `s` from the origin on a rail that turns by `Omega t`.
+#[test]
+fn on_a_turning_rail_lengths_and_directions_have_no_roots() {
+    let mut model = Model::titled("Rail").expect("a title");
+    let [m, l] = ["m", "l"].map(|name| {
+        let unit = if name == "m" { "kg" } else { "m" };
+        model.positive_constant(name, unit, "constant").expect("valid")
+    });
+    let k = model.constant("k", "N/m", "stiffness").expect("valid");
+    let c = model.constant("c", "N.s/m", "damping").expect("valid");
+    let omega = model.constant("Omega", "rad/s", "speed").expect("valid");
+    let s = model.coordinate("s", "m", "distance").expect("valid");
+    let angle = omega * Expr::from(model.time());
+    let carriage = model
+        .particle("carriage", m, vector(s * cos(angle), s * sin(angle), 0))
+        .expect("valid");
+    let axis = Vector::zero();
+    model.spring("spring", carriage, axis, k, l).expect("valid");
+    model.damper("damper", carriage, axis, c).expect("valid");
+    model
+        .normal("rail", carriage, vector(-sin(angle), cos(angle), 0))
+        .expect("valid");
+    let outward = vector(cos(angle), sin(angle), 0);
+    let [spring, damper] = model.forces() else {
+        panic!("two forces")
+    };
+    assert_eq!(spring.on(0), (k * (s - l)) * -outward);
+    assert_eq!(spring.conditions(), [Condition::Positive(s)]);
+    let velocity = Expr::from(s.as_symbol().expect("a symbol").primed());
+    assert_eq!(damper.on(0), (c * velocity) * -outward);
+    assert_eq!(damper.conditions(), [Condition::NotZero(s)]);
+    let rail = &model.reactions()[0];
+    assert_eq!(rail.direction_on(0), vector(-sin(angle), cos(angle), 0));
+    assert!(rail.conditions().is_empty());
+}
+
+#[test]
+fn a_damper_between_bodies_without_monomial_length_has_no_root() {
+    let mut model = Model::titled("Two").expect("a title");
+    let m = model.constant("m", "kg", "mass").expect("valid");
+    let c = model.constant("c", "N.s/m", "damping").expect("valid");
+    let [x, y] = ["x", "y"].map(|name| model.coordinate(name, "m", "position").expect("valid"));
+    let a = model.particle("a", m, vector(x, 0, 0)).expect("valid");
+    let b = model.particle("b", m, vector(0, y, 0)).expect("valid");
+    model.damper("pot", a, b, c).expect("valid");
+    let force = &model.forces()[0];
+    assert_eq!(force.conditions(), [Condition::NotZero(x * x + y * y)]);
+    let [u, v] = [x, y].map(|q| Expr::from(q.as_symbol().expect("a symbol").primed()));
+    // At (3, 4) with velocities (5, 0) the damper lengthens at 3: its pull 3 c acts along (-3, 4)/5.
+    let at = cas::Substitution::new([(x, 3.into()), (y, 4.into()), (u, 5.into()), (v, 0.into())]);
+    let on = |place: usize| force.on(place).map(|component| component.substituted(&at));
+    assert_eq!(on(0), (3 * c) * vector(-3, 4, 0) / 5);
+    assert_eq!(on(1), -on(0));
+}
+
 #[test]
 fn directions_are_made_unit_vectors() {
     let (mut model, cart, _) = cart();
