@@ -9,7 +9,7 @@ use crate::error::Error;
 use crate::library::{DataFolder, Library};
 use crate::notebook::absolute;
 use crate::progress::Progress;
-use crate::session::{FOLDER_VARIABLE, SessionFolder};
+use crate::session::{FOLDER_VARIABLE, LOADER_VARIABLE, SessionFolder, loader_path};
 use clap::Args;
 use std::path::PathBuf;
 use std::process::{Child, Command, ExitCode};
@@ -47,6 +47,7 @@ impl Serve {
             .env("EVCXR_CONFIG_DIR", folder.path())
             .env("JUPYTER_PATH", folder.path())
             .env(FOLDER_VARIABLE, cells_folder)
+            .env(LOADER_VARIABLE, loader_path(&folder)?)
             .spawn()
             .map_err(missing)?;
         let code = wait(&mut server).map_err(missing)?;

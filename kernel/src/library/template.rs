@@ -55,7 +55,7 @@ pub(crate) fn build_in_this_process(library: &std::path::Path) -> Result<(), Err
         folder: library.to_path_buf(),
     };
     let folder = SessionFolder::for_template(&library)?;
-    let command = crate::session::cell_process_command(folder.path(), false)?;
+    let command = crate::session::cell_process_command(&folder, folder.path(), false)?;
     let (mut context, _collector) = start_evcxr(folder.path(), command)?;
     let failed = |error: evcxr::Error| Error::SessionDidNotStart(error.to_string());
     context.execute("let warm = 1;").map_err(failed)?;
@@ -78,7 +78,10 @@ fn run(mut command: Command, name: &str, mut line_seen: impl FnMut(&str)) -> Res
     if let Some(stderr) = child.stderr.take() {
         for line in BufReader::new(stderr).lines().map_while(Result::ok) {
             line_seen(&line);
-            said.push(line);
+            // What is being compiled is progress; the advice of a child is given by its parent.
+            if !line.trim_start().starts_with("Compiling ") && !line.starts_with(" next: ") {
+                said.push(line);
+            }
         }
     }
     if child.wait().map_err(missing)?.success() {

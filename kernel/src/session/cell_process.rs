@@ -4,12 +4,14 @@
 //! an unfinished line would hide a mark, and evcxr would wait for it for ever.
 //! So standard output is led through a pipe, and a thread reads it (see `sieve`).
 
+use super::SessionFolder;
 use super::sieve::{FLUSHED, Sieve, Step};
 use crate::error::Error;
+use std::ffi::OsString;
 use std::fs::File;
 use std::io::{self, PipeReader, Read, Write};
 use std::os::fd::AsFd;
-use std::path::Path;
+use std::path::{Path, PathBuf};
 use std::process::Command;
 use std::sync::atomic::{AtomicUsize, Ordering};
 use std::sync::mpsc;
@@ -19,6 +21,12 @@ use std::thread;
 const CELL_PROCESS_VARIABLE: &str = "EVCXR_IS_RUNTIME";
 /// The folder in which cells run.
 pub(crate) const FOLDER_VARIABLE: &str = "GUDGEON_FOLDER";
+/// Where the system's loader looks for shared objects.
+pub(crate) const LOADER_VARIABLE: &str = if cfg!(target_os = "macos") {
+    "DYLD_LIBRARY_PATH"
+} else {
+    "LD_LIBRARY_PATH"
+};
 /// Present if the parent understands how cells end.
 const REPORT_VARIABLE: &str = "GUDGEON_REPORT";
 /// Where a cell finds `FLUSH_CELLS`: process number and address.
@@ -29,20 +37,54 @@ const SLOT_VARIABLE: &str = "GUDGEON_FLUSH_SLOT";
 /// The cells' standard library is a shared object, this program's is linked in: two buffers for one stream.
 static FLUSH_CELLS: AtomicUsize = AtomicUsize::new(0);
 
-/// The command that starts a cell process.
-pub(crate) fn cell_process_command(cells_folder: &Path, report: bool) -> Result<Command, Error> {
+/// The command that starts a cell process of a session.
+pub(crate) fn cell_process_command(
+    session: &SessionFolder,
+    cells_folder: &Path,
+    report: bool,
+) -> Result<Command, Error> {
     let program = std::env::current_exe().map_err(|cause| Error::ProgramMissing {
         program: "gudgeon".to_owned(),
         cause,
     })?;
     let mut command = Command::new(program);
     command.env(FOLDER_VARIABLE, cells_folder);
+    command.env(LOADER_VARIABLE, loader_path(session)?);
     if report {
         command.env(REPORT_VARIABLE, "1");
     } else {
         command.env_remove(REPORT_VARIABLE);
     }
     Ok(command)
+}
+
+/// The folders of the standard library and of the helper library, then those that were named already.
+///
+/// The compiler writes relative paths into the object of a cell, and evcxr then moves that object one folder up:
+/// they lead astray wherever the data folder and the toolchain have a common folder, as in every home.
+pub(crate) fn loader_path(session: &SessionFolder) -> Result<OsString, Error> {
+    let unusable = |cause| Error::ProgramMissing {
+        program: "rustc".to_owned(),
+        cause,
+    };
+    let output = Command::new("rustc")
+        .args(["--print", "target-libdir"])
+        .current_dir(session.path())
+        .output()
+        .map_err(unusable)?;
+    let standard = PathBuf::from(String::from_utf8_lossy(&output.stdout).trim());
+    // The folder is <toolchain>/lib/rustlib/<target>/lib.
+    let target = standard.parent().and_then(Path::file_name).unwrap_or_default();
+    let helper = session
+        .path()
+        .join("crate/target")
+        .join(target)
+        .join("debug/deps");
+    let inherited = std::env::var_os(LOADER_VARIABLE).unwrap_or_default();
+    let folders = [standard, helper]
+        .into_iter()
+        .chain(std::env::split_paths(&inherited));
+    std::env::join_paths(folders).map_err(|cause| unusable(io::Error::other(cause)))
 }
 
 /// Prepares the process if it is one that runs cells; otherwise does nothing.

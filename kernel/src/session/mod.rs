@@ -15,7 +15,7 @@ mod folder;
 mod sieve;
 
 pub use cell_process::enter_if_cell_process;
-pub(crate) use cell_process::{FOLDER_VARIABLE, cell_process_command};
+pub(crate) use cell_process::{FOLDER_VARIABLE, LOADER_VARIABLE, cell_process_command, loader_path};
 pub use failure::Failure;
 pub use folder::SessionFolder;
 
@@ -66,7 +66,7 @@ impl Session {
     /// When the folder cannot be made or evcxr does not start.
     pub fn start(data: &DataFolder, library: &Library, cells_folder: &Path) -> Result<Session, Error> {
         let folder = SessionFolder::create(data, library)?;
-        let command = cell_process_command(cells_folder, true)?;
+        let command = cell_process_command(&folder, cells_folder, true)?;
         let (context, collector) = start_evcxr(folder.path(), command)?;
         Ok(Session {
             context,
