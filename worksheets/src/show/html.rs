@@ -59,10 +59,15 @@ pub(super) fn page(page: &Page) -> String {
     html.out
 }
 
+/// TeX in one page beyond this many bytes is left as TeX, so that a long derivation is shown without
+/// a wait; the first formulas of a page are the result.
+const MOST_TYPESET: usize = 30_000;
+
 #[derive(Default)]
 struct Html {
     out: String,
     formulas: bool,
+    typeset: usize,
 }
 
 impl Html {
@@ -128,6 +133,10 @@ impl Html {
         self.out.push_str(&tex);
         self.out.push_str(dollars);
         self.close(tag);
+        self.typeset += formula.tex.len();
+        if self.typeset > MOST_TYPESET {
+            return;
+        }
         if let Some(mathml) = typeset::mathml(&formula.tex, display) {
             self.out
                 .push_str("<script type=\"application/mathml+xml\" class=\"gudgeon-mathml\">");

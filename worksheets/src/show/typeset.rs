@@ -8,7 +8,7 @@ use std::sync::{Mutex, OnceLock, PoisonError};
 
 /// TeX longer than this is left as TeX: its cost grows faster than its length, and the front end
 /// that has a typesetter of its own can still show it.
-const MOST_BYTES: usize = 6_000;
+const MOST_BYTES: usize = 4_000;
 
 /// Deeper nesting of braces than this is left as TeX.
 const MOST_DEPTH: usize = 40;
