@@ -16,3 +16,4 @@ pub use expr::{
     pi, postorder, sin, sqrt, tan,
 };
 pub use number::{NumberError, Rational};
+pub mod text;
