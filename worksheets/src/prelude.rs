@@ -13,6 +13,7 @@
 
 pub use crate::model::{Particle, Vector, vector};
 pub use crate::sheet::Sheet;
+pub use crate::show::ShowsItself;
 pub use cas::{Expr, Symbol, cos, exp, ln, pi, sin, sqrt, tan};
 
 /// The number written in `text`, exactly: an integer, a decimal or a quotient.

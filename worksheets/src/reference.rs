@@ -5,7 +5,21 @@
 //! derives equations; so an agreement means something.
 //!
 //! Numbers are rounded to what the tolerances support, so that a report does not depend on the machine.
+//!
+//! # Sources
+//!
+//! Quoted from memory, not looked up:
+//!
+//! - \[Giraud2005\] L. Giraud, J. Langou, M. Rozloznik, J. van den Eshof, "Rounding error analysis of the
+//!   classical Gram-Schmidt orthogonalization process", Numerische Mathematik 101 (2005).
+//! - \[Hairer1993\] E. Hairer, S. P. Norsett, G. Wanner, "Solving Ordinary Differential Equations I",
+//!   2nd edition, Springer, 1993.
+//! - \[Steele2014\] G. L. Steele, D. Lea, C. H. Flood, "Fast splittable pseudorandom number generators",
+//!   OOPSLA 2014.
+//! - \[Whittaker1937\] E. T. Whittaker, "A Treatise on the Analytical Dynamics of Particles and Rigid
+//!   Bodies", 4th edition, Cambridge University Press, 1937.
 
+mod check;
 mod derived;
 mod draw;
 mod error;
@@ -20,6 +34,7 @@ mod stated;
 #[cfg(test)]
 mod tests;
 
+pub use check::Check;
 pub use derived::DerivedMotion;
 pub use error::ReferenceError;
 pub use report::{Agreement, Curve, Deviation, MotionReport, Report, StandInRow, ValueRow};

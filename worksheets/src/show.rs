@@ -4,11 +4,20 @@
 //! and formulas, and each writer escapes for its own format.
 
 mod bundle;
+mod cells;
+mod display;
 mod escape;
+mod formula;
 mod html;
 mod latex;
+mod of_model;
+mod of_report;
 pub mod page;
 mod plain;
+mod plot;
 mod typeset;
 
 pub use bundle::{Bundle, RECORD_TYPE};
+pub use display::{Bundled, ShowsItself, print};
+pub use of_model::{assumptions_page, model, quantities_page};
+pub use of_report::report;

@@ -29,7 +29,7 @@ impl Model {
         let particle = self.place_of(&particle.into())?;
         let place = format!("the direction of `{name}`");
         self.check_vector(direction, &place, Allowed::POSITION, &Dimension::ONE)?;
-        let meaning = format!("normal reaction `{name}` on `{}`", self.particles[particle].name);
+        let meaning = format!("normal reaction {name} on {}", self.particles[particle].name);
         let along = self.along(name, direction)?;
         let directions = vec![Load {
             particle,
@@ -55,7 +55,7 @@ impl Model {
         let ends = self.ends(name, [a.into(), b.into()])?;
         let along = self.along(name, ends[1].position() - ends[0].position())?;
         let directions = self.opposite_loads(ends, along.unit);
-        let meaning = format!("tension of the link `{name}`");
+        let meaning = format!("tension of the link {name}");
         self.react(name, ReactionKind::Link, &meaning, along, directions)
     }
 

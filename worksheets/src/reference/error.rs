@@ -38,7 +38,7 @@ pub enum ReferenceError {
         text: String,
     },
     /// A stand-in that uses what it may not.
-    #[error("`{body:?}` cannot stand for `{name}`: {reason}")]
+    #[error("`{body}` cannot stand for `{name}`: {reason}")]
     StandIn {
         /// The function.
         name: Name,
@@ -94,7 +94,7 @@ pub enum ReferenceError {
         coordinates: usize,
     },
     /// The derived equations hold something that has no value.
-    #[error("the derived expression `{expression:?}` cannot be evaluated: {reason}")]
+    #[error("the derived expression `{expression}` cannot be evaluated: {reason}")]
     Derived {
         /// The expression.
         expression: Expr,

@@ -300,11 +300,9 @@ fn hundredths(count: i64) -> Expr {
 
 /// An expression in plain notation, a number with few digits as a decimal.
 fn spelled(expr: Expr) -> String {
-    let symbol = || expr.as_symbol().map(|symbol| symbol.to_string());
     expr.as_number()
         .and_then(decimal)
-        .or_else(symbol)
-        .unwrap_or_else(|| format!("{expr:?}"))
+        .unwrap_or_else(|| expr.to_string())
 }
 
 /// A number as a decimal, where it has few digits.

@@ -1,0 +1,111 @@
+//! Formulas of expressions in the notation of a sheet.
+
+use cas::text::{Arrangement, latex, latex_equation, plain, plain_equation};
+use cas::{Expr, Name, Symbol};
+
+use super::page::{Formula, Line, Piece};
+use crate::model::{Condition, Model, Vector};
+
+/// Display formulas are broken into lines not much wider than this, in em.
+const LINE: usize = 44;
+
+/// How the expressions of a sheet are written: names in order of declaration, dots for rates.
+#[derive(Clone, Debug, Default)]
+pub(super) struct Notation(Arrangement);
+
+impl Notation {
+    /// The notation of a model.
+    pub(super) fn of(model: &Model) -> Self {
+        let names = model.quantities().iter().map(|declared| declared.name());
+        Self(
+            Arrangement::of_names(names)
+                .with_coordinates(&model.coordinates())
+                .with_dots(model.time()),
+        )
+    }
+
+    /// An expression on one line.
+    pub(super) fn formula(&self, expr: Expr) -> Formula {
+        Formula::new(latex(expr, &self.0), plain(expr, &self.0))
+    }
+
+    /// An equation, its right side broken into lines where it is long.
+    pub(super) fn equation(&self, left: &Formula, relation: &Relation, right: Expr) -> Formula {
+        Formula::new(
+            latex_equation(&left.tex, relation.tex, right, LINE, &self.0),
+            plain_equation(&left.plain, relation.plain, right, &self.0),
+        )
+    }
+
+    /// An expression as a result, broken into lines where it is long.
+    pub(super) fn result(&self, expr: Expr) -> Formula {
+        let nothing = Formula::new("", "");
+        let blank = Relation { tex: "", plain: "" };
+        let broken = self.equation(&nothing, &blank, expr);
+        Formula::new(broken.tex.trim(), broken.plain.trim())
+    }
+
+    /// The components of a vector in a row.
+    pub(super) fn components(&self, vector: Vector) -> Formula {
+        let parts = vector.components().map(|component| self.formula(component));
+        let tex = parts.clone().map(|part| part.tex).join(",\\; ");
+        let plain = parts.map(|part| part.plain).join(", ");
+        Formula::new(format!("\\left({tex}\\right)"), format!("({plain})"))
+    }
+
+    /// A condition.
+    pub(super) fn condition(&self, condition: &Condition) -> Formula {
+        let (expr, relation) = match condition {
+            Condition::NotZero(expr) => (
+                *expr,
+                Relation {
+                    tex: "\\neq",
+                    plain: "!=",
+                },
+            ),
+            Condition::NotNegative(expr) => (
+                *expr,
+                Relation {
+                    tex: "\\geq",
+                    plain: ">=",
+                },
+            ),
+            Condition::Positive(expr) => (*expr, Relation { tex: ">", plain: ">" }),
+        };
+        let shown = self.formula(expr);
+        Formula::new(
+            format!("{} {} 0", shown.tex, relation.tex),
+            format!("{} {} 0", shown.plain, relation.plain),
+        )
+    }
+
+    /// "Holds where" the conditions do.
+    pub(super) fn where_holds(&self, conditions: &[Condition]) -> Line {
+        let mut line = vec![Piece::quiet("Holds where ")];
+        for (place, condition) in conditions.iter().enumerate() {
+            if place > 0 {
+                line.push(Piece::words(", "));
+            }
+            line.push(Piece::Math(self.condition(condition)));
+        }
+        line.push(Piece::words("."));
+        line
+    }
+}
+
+/// A sign between two sides.
+pub(super) struct Relation {
+    pub(super) tex: &'static str,
+    pub(super) plain: &'static str,
+}
+
+/// A symbol given by its text, such as `phi'`.
+pub(super) fn symbol(text: &str) -> Formula {
+    let name = text.trim_end_matches('\'');
+    let primes = u8::try_from(text.len() - name.len()).unwrap_or(u8::MAX);
+    match Name::new(name) {
+        Ok(name) => Notation::default().formula(Symbol::from(name).with_primes(primes).into()),
+        // What is no name comes from a record that was changed by hand; it is shown as text.
+        Err(_) => Formula::new("\\text{?}", text),
+    }
+}
