@@ -339,12 +339,6 @@ fn deep_order(a: Expr, b: Expr) -> Ordering {
     Ordering::Equal
 }
 
-impl std::fmt::Debug for Expr {
-    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
-        write!(f, "Expr#{:016x}", self.0.hash)
-    }
-}
-
 impl PartialEq for Expr {
     fn eq(&self, other: &Self) -> bool {
         std::ptr::eq(self.0, other.0) || (self.0.hash == other.0.hash && deep_order(*self, *other).is_eq())

@@ -4,7 +4,7 @@ use num_traits::One;
 
 use super::arrangement::Arrangement;
 use super::order;
-use super::pieces::{Hold, Piece, Quotient, hold as plain_hold, sum, text, written};
+use super::pieces::{Hold, MOST_BYTES, Piece, Quotient, hold as plain_hold, sum, text, written};
 use crate::expr::{Application, Expr, Function, Kind, Symbol};
 use crate::number::Rational;
 
@@ -23,7 +23,7 @@ pub fn latex(expr: Expr, arrangement: &Arrangement) -> String {
 /// Pieces in LaTeX.
 pub(super) fn latex_of(pieces: Vec<Piece>, arrangement: &Arrangement) -> String {
     let parts = |expr, signed| parts(expr, signed, arrangement);
-    written(pieces, ["\\left(", "\\right)"], hold, parts)
+    written(pieces, MOST_BYTES, ["\\left(", "\\right)"], hold, parts)
 }
 
 /// A fraction bar holds its parts together; an exponential is a power.

@@ -91,11 +91,13 @@ pub(super) fn hold(expr: Expr) -> Hold {
 }
 
 /// The longest text of one expression; a shared graph can be exponentially longer when written out.
-const MOST_BYTES: usize = 2 << 20;
+pub(super) const MOST_BYTES: usize = 2 << 20;
 
-/// Writes pieces, first to last, by taking each expression apart until only text is left.
+/// Writes pieces, first to last, by taking each expression apart until only text is left; stops with
+/// three dots when the text is longer than `most` bytes.
 pub(super) fn written(
     pieces: Vec<Piece>,
+    most: usize,
     brackets: [&str; 2],
     hold: impl Fn(Expr) -> Hold,
     parts: impl Fn(Expr, bool) -> Vec<Piece>,
@@ -103,7 +105,7 @@ pub(super) fn written(
     let mut out = String::new();
     let mut waiting: Vec<Piece> = pieces.into_iter().rev().collect();
     while let Some(piece) = waiting.pop() {
-        if out.len() > MOST_BYTES {
+        if out.len() > most {
             out.push_str("...");
             break;
         }

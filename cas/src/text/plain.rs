@@ -5,9 +5,12 @@ use std::fmt;
 use num_traits::One;
 
 use super::arrangement::Arrangement;
-use super::pieces::{Hold, Piece, Quotient, hold, sum, text, written};
+use super::pieces::{Hold, MOST_BYTES, Piece, Quotient, hold, sum, text, written};
 use crate::expr::{Application, Expr, Kind};
 use crate::number::Rational;
+
+/// Debug output and error messages are cut at about this length.
+const MOST_BYTES_OF_DEBUG: usize = 2_000;
 
 /// The expression in plain notation, with names in the order of the arrangement.
 ///
@@ -18,8 +21,12 @@ use crate::number::Rational;
 /// ```
 #[must_use]
 pub fn plain(expr: Expr, arrangement: &Arrangement) -> String {
+    at_most(expr, MOST_BYTES, arrangement)
+}
+
+fn at_most(expr: Expr, most: usize, arrangement: &Arrangement) -> String {
     let parts = |expr, signed| parts(expr, signed, arrangement);
-    written(vec![Piece::Whole(expr, Hold::Sum)], ["(", ")"], hold, parts)
+    written(vec![Piece::Whole(expr, Hold::Sum)], most, ["(", ")"], hold, parts)
 }
 
 fn parts(expr: Expr, signed: bool, arrangement: &Arrangement) -> Vec<Piece> {
@@ -108,6 +115,13 @@ fn quotient(expr: Expr, signed: bool, arrangement: &Arrangement) -> Vec<Piece> {
         pieces.push(text(")"));
     }
     pieces
+}
+
+/// Plain notation, cut short where it would flood a message.
+impl fmt::Debug for Expr {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        f.write_str(&at_most(*self, MOST_BYTES_OF_DEBUG, &Arrangement::default()))
+    }
 }
 
 impl fmt::Display for Expr {

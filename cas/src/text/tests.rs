@@ -132,6 +132,7 @@ fn deep_and_shared_expressions_are_written_without_overflow() {
     let tower = (0..100_000).fold(x, |inner, _| sin(inner));
     assert_eq!(plain(tower, &arrangement()).matches("sin").count(), 100_000);
     assert!(latex(tower, &arrangement()).len() > 100_000);
+    assert!(format!("{tower:?}").len() < 3_000, "messages are cut short");
     // Written out, this graph of fifty nodes has 2^50 letters; the text stops instead.
     let shared = (0..50).fold(x, |part, _| sin(part) * cos(part));
     assert!(plain(shared, &arrangement()).ends_with("..."));
