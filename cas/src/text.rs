@@ -9,6 +9,8 @@ mod lines;
 mod order;
 mod pieces;
 mod plain;
+mod read;
+mod scope;
 #[cfg(test)]
 mod tests;
 mod width;
@@ -17,3 +19,5 @@ pub use arrangement::Arrangement;
 pub use latex::{latex, latex_name};
 pub use lines::{latex_equation, latex_lines, plain_equation};
 pub use plain::plain;
+pub use read::{ReadError, ReadFault, read};
+pub use scope::Scope;

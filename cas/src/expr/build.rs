@@ -202,6 +202,9 @@ impl Expr {
             return self;
         }
         let number = Self::number(coefficient);
+        if self.is_one() {
+            return number;
+        }
         let rest = match self.kind() {
             Kind::Product(factors) => factors,
             _ => std::slice::from_ref(&self),
@@ -431,6 +434,8 @@ mod tests {
         let [x, ..] = xyz();
         assert_eq!(sin(-2 * x), -sin(2 * x));
         assert_eq!(cos(-x), cos(x));
+        let half = Expr::from(1) / 2;
+        assert_eq!(sin(-half), -sin(half));
     }
 
     #[test]

@@ -26,11 +26,17 @@ pub(super) fn latex_of(pieces: Vec<Piece>, arrangement: &Arrangement) -> String 
     written(pieces, MOST_BYTES, ["\\left(", "\\right)"], hold, parts)
 }
 
+/// Every negative power stands below the fraction bar.
+pub(super) fn goes_below(_: Expr, exponent: &Rational) -> bool {
+    exponent.is_negative()
+}
+
 /// A fraction bar holds its parts together; an exponential is a power.
 fn hold(expr: Expr) -> Hold {
     match expr.kind() {
         Kind::Elementary(Function::Exponential, _) => Hold::Power,
         Kind::Elementary(..) => Hold::Product,
+        Kind::Power(_, exponent) if exponent.is_negative() => Hold::Product,
         _ => plain_hold(expr),
     }
 }
@@ -122,7 +128,7 @@ fn power(base: Expr, exponent: &Rational) -> Vec<Piece> {
 }
 
 fn quotient(expr: Expr, signed: bool, arrangement: &Arrangement) -> Vec<Piece> {
-    let quotient = Quotient::of(expr, arrangement);
+    let quotient = Quotient::of(expr, goes_below, arrangement);
     let mut pieces = Vec::new();
     if signed && quotient.negative {
         pieces.push(text("-"));

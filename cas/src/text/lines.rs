@@ -1,7 +1,7 @@
 //! Long sums broken into lines at their signs, for a given width.
 
 use super::arrangement::Arrangement;
-use super::latex::{coefficient, factors, latex, latex_of, signed_terms};
+use super::latex::{coefficient, factors, goes_below, latex, latex_of, signed_terms};
 use super::pieces::{Piece, Quotient, text};
 use super::plain::plain;
 use super::width::width;
@@ -50,7 +50,7 @@ fn filled(terms: Vec<(bool, String)>, em: usize) -> Vec<String> {
 
 /// A product with one long bracket: the lines break within the bracket.
 fn bracket_lines(expr: Expr, em: usize, arrangement: &Arrangement) -> Option<Vec<String>> {
-    let quotient = Quotient::of(expr, arrangement);
+    let quotient = Quotient::of(expr, goes_below, arrangement);
     let place = quotient
         .above
         .iter()

@@ -6,6 +6,7 @@ use num_traits::One;
 use super::arrangement::Arrangement;
 use super::order;
 use crate::expr::{Expr, Kind};
+use crate::number::Rational;
 
 /// How tightly an expression holds together where it is written.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
@@ -43,13 +44,18 @@ pub(super) struct Quotient {
 }
 
 impl Quotient {
-    pub(super) fn of(expr: Expr, arrangement: &Arrangement) -> Self {
+    /// Takes an expression apart; `goes_below` says which powers stand below the line.
+    pub(super) fn of(
+        expr: Expr,
+        goes_below: impl Fn(Expr, &Rational) -> bool,
+        arrangement: &Arrangement,
+    ) -> Self {
         let (coefficient, rest) = expr.coefficient_and_rest();
         let size = coefficient.absolute();
         let (mut above, mut below) = (Vec::new(), Vec::new());
         for factor in rest.factors() {
             match factor.kind() {
-                Kind::Power(base, exponent) if exponent.is_negative() => {
+                Kind::Power(base, exponent) if goes_below(*base, exponent) => {
                     below.push(base.power(-exponent.clone()))
                 }
                 _ if factor.is_one() => {}
@@ -76,6 +82,15 @@ impl Quotient {
     }
 }
 
+/// Whether a power is written as a division in plain notation: only where the division is read back
+/// as the same power, and not as another spelling of the same function.
+pub(super) fn divides(base: Expr, exponent: &Rational) -> bool {
+    exponent.is_negative() && {
+        let below = base.power(-exponent.clone());
+        below.power(-1) == base.power(exponent.clone())
+    }
+}
+
 /// How tightly an expression holds together, in a notation where quotients are products.
 pub(super) fn hold(expr: Expr) -> Hold {
     match expr.kind() {
@@ -84,7 +99,7 @@ pub(super) fn hold(expr: Expr) -> Hold {
         Kind::Number(value) if !value.is_integer() => Hold::Product,
         Kind::Product(factors) if factors[0].as_number().is_some_and(|n| n.is_negative()) => Hold::Sum,
         Kind::Product(_) => Hold::Product,
-        Kind::Power(_, exponent) if exponent.is_negative() => Hold::Product,
+        Kind::Power(base, exponent) if divides(*base, exponent) => Hold::Product,
         Kind::Power(..) => Hold::Power,
         _ => Hold::Atom,
     }

@@ -5,7 +5,7 @@ use std::fmt;
 use num_traits::One;
 
 use super::arrangement::Arrangement;
-use super::pieces::{Hold, MOST_BYTES, Piece, Quotient, hold, sum, text, written};
+use super::pieces::{Hold, MOST_BYTES, Piece, Quotient, divides, hold, sum, text, written};
 use crate::expr::{Application, Expr, Kind};
 use crate::number::Rational;
 
@@ -36,7 +36,7 @@ fn parts(expr: Expr, signed: bool, arrangement: &Arrangement) -> Vec<Piece> {
         Kind::Sum(terms) => sum(terms, arrangement, ["-", " + ", " - "]),
         Kind::Elementary(function, argument) => call(function.name().to_owned(), &[*argument]),
         Kind::Unknown(application) => unknown(application),
-        Kind::Power(base, exponent) if !exponent.is_negative() => power(*base, exponent),
+        Kind::Power(base, exponent) if !divides(*base, exponent) => power(*base, exponent),
         Kind::Number(_) | Kind::Product(_) | Kind::Power(..) => quotient(expr, signed, arrangement),
     }
 }
@@ -70,7 +70,8 @@ fn power(base: Expr, exponent: &Rational) -> Vec<Piece> {
     if exponent.as_small() == Some((1, 2)) {
         return call("sqrt".to_owned(), &[base]);
     }
-    let exponent = if exponent.is_integer() {
+    let bare = exponent.is_integer() && !exponent.is_negative();
+    let exponent = if bare {
         exponent.to_string()
     } else {
         format!("({exponent})")
@@ -79,7 +80,7 @@ fn power(base: Expr, exponent: &Rational) -> Vec<Piece> {
 }
 
 fn quotient(expr: Expr, signed: bool, arrangement: &Arrangement) -> Vec<Piece> {
-    let quotient = Quotient::of(expr, arrangement);
+    let quotient = Quotient::of(expr, divides, arrangement);
     let mut pieces = Vec::new();
     if signed && quotient.negative {
         pieces.push(text("-"));
@@ -101,7 +102,10 @@ fn quotient(expr: Expr, signed: bool, arrangement: &Arrangement) -> Vec<Piece> {
         return pieces;
     }
     let count = quotient.below.len() + usize::from(!quotient.denominator.is_one());
-    pieces.push(text(if count > 1 { "/(" } else { "/" }));
+    // Dividing by `(a*b)` divides by each factor; a product that is one factor has brackets of its own.
+    let product = matches!(quotient.below.as_slice(), [only] if matches!(only.kind(), Kind::Product(_)));
+    let bracket = count > 1 || product;
+    pieces.push(text(if bracket { "/(" } else { "/" }));
     if !quotient.denominator.is_one() {
         pieces.push(text(quotient.denominator.to_string()));
     }
@@ -111,7 +115,7 @@ fn quotient(expr: Expr, signed: bool, arrangement: &Arrangement) -> Vec<Piece> {
         }
         pieces.push(Piece::Whole(*factor, Hold::Power));
     }
-    if count > 1 {
+    if bracket {
         pieces.push(text(")"));
     }
     pieces

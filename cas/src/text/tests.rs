@@ -1,6 +1,6 @@
 //! What is written, in both notations.
 
-use super::{Arrangement, latex, latex_lines, latex_name, plain};
+use super::{Arrangement, ReadFault, Scope, latex, latex_lines, latex_name, plain, read};
 use crate::expr::{Expr, Name, Symbol, cos, exp, sin, sqrt, tan};
 use crate::number::Rational;
 
@@ -54,7 +54,7 @@ fn both_notations() {
         ),
         (
             3 / (2 * (x + l)),
-            "3/(2*(l + x))",
+            "3/((2*(l + x)))",
             "\\frac{3}{2 \\left(l + x\\right)}",
         ),
         (l * x.squared() / 2, "l*x^2/2", "\\frac{1}{2} l x^{2}"),
@@ -144,4 +144,190 @@ fn the_order_does_not_depend_on_how_a_sum_was_built() {
     let first = plain(a * b + c - a * c + b.squared(), &Arrangement::default());
     let second = plain(b.squared() - a * c + c + b * a, &Arrangement::default());
     assert_eq!(first, second);
+}
+
+/// Every expression here has a spelling that a reader could take for another one.
+#[test]
+fn what_is_written_is_read_as_the_same() {
+    let [x, y, t] = names(["x", "y_1", "t"]);
+    let half = Rational::new(-1, 2).expect("not zero below");
+    let f = Name::new("F").expect("a valid name");
+    let long: Expr = (1..400).map(|i| sin(i * x)).sum();
+    let cases = [
+        x / x,
+        Expr::zero() * (1 / x),
+        x / 0,
+        Expr::from(3) / 2 * (x / 0),
+        (2 * x).power(-1),
+        x.power(-1) / 2,
+        (2 * x).power(-1) * y,
+        (2 * x).power(-1) / y,
+        (2 * x).power(-2) / 3,
+        y / (2 * x),
+        x.power(-1).power(-1),
+        (x / y).power(-2),
+        x.power(half),
+        1 / sqrt(x),
+        sqrt(x).squared(),
+        sqrt(x) * sqrt(x),
+        -(x + y),
+        -2 * (x + y) * (x - y),
+        Expr::product_of([Expr::from(-1), x + y]),
+        (-x).squared(),
+        Expr::from(2).power(Rational::new(1, 3).expect("not zero below")),
+        Expr::from(2).power(i32::MAX),
+        Expr::from(-7) / 3,
+        exp(-x) * tan(x / 2) + crate::expr::ln(x + 1) - crate::expr::pi() / 6,
+        rate(x, 2) * rate(y, 1).power(3),
+        Expr::unknown_derivative(f, &[0], &[t]),
+        Expr::unknown_derivative(f, &[2], &[x + t]),
+        Expr::unknown_derivative(f, &[5], &[t]),
+        Expr::unknown_derivative(f, &[0, 2], &[x, y / 2]),
+        Expr::unknown(f, &[]),
+        long,
+        long + x,
+        long * long - (x - long),
+        (1 / x).power(0),
+    ];
+    for expr in cases {
+        let written = plain(expr, &arrangement());
+        let again = read(&written, &Scope::open()).unwrap_or_else(|error| panic!("{error}"));
+        assert_eq!(again, expr, "{written} was read as {again}");
+    }
+}
+
+#[test]
+fn decimals_are_read_exactly_and_signs_where_they_may_stand() {
+    let [x, m] = names(["x", "m"]);
+    for (text, expected) in [
+        ("9.81*m", Expr::from(981) / 100 * m),
+        ("-x^2", -x.squared()),
+        ("x^-1", 1 / x),
+        ("x^(-3)", x.power(-3)),
+        ("m/(2*x)", m / 2 / x),
+        ("x - -0", x),
+        ("  x +\tm ", x + m),
+    ] {
+        let found = read(text, &Scope::open());
+        if text.contains("- -") {
+            assert!(found.is_err(), "a second sign needs brackets");
+        } else {
+            assert_eq!(found.expect("reads"), expected, "{text}");
+        }
+    }
+}
+
+#[test]
+fn faults_are_pointed_at() {
+    for (text, place) in [
+        ("", 1),
+        ("2*", 3),
+        ("2 x", 3),
+        ("(x + 1", 7),
+        ("x + $", 5),
+        ("x^y", 3),
+        ("1.2.3", 1),
+        ("sin x", 1),
+        ("x^(1/0)", 7),
+        ("F[1,](x)", 5),
+        ("a ++ b", 4),
+    ] {
+        let error = read(text, &Scope::open()).expect_err(text);
+        assert_eq!(error.place, place, "{error}");
+        assert!(!error.hint().is_empty());
+    }
+    let shown = read("x + $", &Scope::open())
+        .expect_err("no expression")
+        .to_string();
+    assert!(shown.ends_with("x + $\n    ^"), "{shown}");
+}
+
+#[test]
+fn undeclared_names_suggest_the_nearest() {
+    let known = ["phi", "m_t"].map(|name| Name::new(name).expect("a valid name"));
+    let function = Name::new("F").expect("a valid name");
+    let scope = Scope::of(known, [(function, 1)]);
+    assert!(read("m_t*phi'' + F(phi)", &scope).is_ok());
+    let error = read("m_t*phj", &scope).expect_err("undeclared");
+    assert_eq!(error.hint(), "did you mean `phi`?");
+    assert!(matches!(
+        read("G(phi)", &scope).expect_err("undeclared").what,
+        ReadFault::Undeclared { .. }
+    ));
+    assert!(matches!(
+        read("F(phi, m_t)", &scope).expect_err("one argument").what,
+        ReadFault::Arguments {
+            declared: 1,
+            given: 2,
+            ..
+        }
+    ));
+}
+
+#[test]
+fn deep_and_long_texts_are_refused_without_overflow() {
+    let deep = format!("{}x{}", "(".repeat(100_000), ")".repeat(100_000));
+    assert_eq!(
+        read(&deep, &Scope::open()).expect_err("too deep").what,
+        ReadFault::TooDeep
+    );
+    let long = "x+".repeat(1 << 20);
+    assert_eq!(
+        read(&long, &Scope::open()).expect_err("too long").what,
+        ReadFault::TooLong
+    );
+    let powers = "x^".repeat(1_000);
+    assert!(read(&powers, &Scope::open()).is_err());
+}
+
+mod round_trip {
+    use proptest::prelude::*;
+
+    use super::super::{Arrangement, Scope, plain, read};
+    use crate::expr::{Expr, Function, Name};
+    use crate::number::Rational;
+
+    fn leaf() -> impl Strategy<Value = Expr> {
+        prop_oneof![
+            (0..3usize, 0..3u8).prop_map(|(place, primes)| {
+                let symbol = Expr::symbol(["x", "m_t", "phi"][place]).expect("a valid name");
+                symbol.as_symbol().expect("a symbol").with_primes(primes).into()
+            }),
+            (-3..4i64, 1..4i64).prop_map(|(n, d)| Expr::from(n) / d),
+            Just(crate::expr::pi()),
+        ]
+    }
+
+    fn expression() -> impl Strategy<Value = Expr> {
+        leaf().prop_recursive(5, 40, 4, |inner| {
+            prop_oneof![
+                prop::collection::vec(inner.clone(), 2..4).prop_map(Expr::sum_of),
+                prop::collection::vec(inner.clone(), 2..4).prop_map(Expr::product_of),
+                (inner.clone(), -3..4i64, 1..4i64)
+                    .prop_map(|(base, n, d)| base.power(Rational::new(n, d).expect("not zero below"))),
+                (inner.clone(), 0..5usize)
+                    .prop_map(|(argument, place)| Expr::elementary(Function::ALL[place], argument)),
+                (inner.clone(), inner, 0..3u32, 0..2u32).prop_map(|(a, b, i, j)| {
+                    let name = Name::new("F").expect("a valid name");
+                    Expr::unknown_derivative(name, &[i, j], &[a, b])
+                }),
+            ]
+        })
+    }
+
+    proptest! {
+        #[test]
+        fn of_random_expressions(expr in expression()) {
+            let written = plain(expr, &Arrangement::default());
+            let again = read(&written, &Scope::open()).map_err(|error| TestCaseError::fail(error.to_string()))?;
+            prop_assert_eq!(again, expr, "written as {}", written);
+        }
+
+        #[test]
+        fn no_text_makes_the_reader_panic(text in "[-+*/^()\\[\\], .'a-c0-9πφ]{0,30}") {
+            if let Ok(expr) = read(&text, &Scope::open()) {
+                prop_assert!(!plain(expr, &Arrangement::default()).is_empty());
+            }
+        }
+    }
 }

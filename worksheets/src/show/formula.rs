@@ -1,7 +1,7 @@
 //! Formulas of expressions in the notation of a sheet.
 
-use cas::text::{Arrangement, latex, latex_equation, plain, plain_equation};
-use cas::{Expr, Name, Symbol};
+use cas::Expr;
+use cas::text::{Arrangement, Scope, latex, latex_equation, plain, plain_equation, read};
 
 use super::page::{Formula, Line, Piece};
 use crate::model::{Condition, Model, Vector};
@@ -99,13 +99,12 @@ pub(super) struct Relation {
     pub(super) plain: &'static str,
 }
 
-/// A symbol given by its text, such as `phi'`.
-pub(super) fn symbol(text: &str) -> Formula {
-    let name = text.trim_end_matches('\'');
-    let primes = u8::try_from(text.len() - name.len()).unwrap_or(u8::MAX);
-    match Name::new(name) {
-        Ok(name) => Notation::default().formula(Symbol::from(name).with_primes(primes).into()),
-        // What is no name comes from a record that was changed by hand; it is shown as text.
-        Err(_) => Formula::new("\\text{?}", text),
+/// A formula given in plain notation, as a record holds it.
+///
+/// What cannot be read comes from a record that was changed by hand; it is shown as the text it is.
+pub(super) fn stated(text: &str) -> Piece {
+    match read(text, &Scope::open()) {
+        Ok(expr) => Piece::Math(Notation::default().formula(expr)),
+        Err(_) => Piece::words(text),
     }
 }

@@ -67,8 +67,8 @@ fn checks(report: &Report) -> Vec<Vec<Line>> {
         check("energy gained against work done".to_owned(), &motion.energy),
     ];
     if report.accelerations.agreement == Agreement::Disagrees {
-        let name = formula::symbol(&report.worst_coordinate);
-        rows[0][0].extend([Piece::words(", worst for "), Piece::Math(name)]);
+        let name = formula::stated(&report.worst_coordinate);
+        rows[0][0].extend([Piece::words(", worst for "), name]);
     }
     if let Some(order) = &motion.order {
         rows.push(vec![
@@ -162,7 +162,7 @@ fn origin(drawn: bool) -> Line {
 
 fn value(row: &ValueRow) -> Vec<Line> {
     vec![
-        vec![Piece::Math(formula::symbol(&row.symbol))],
+        vec![formula::stated(&row.symbol)],
         words(row.value.clone()),
         words(row.unit.clone()),
         origin(row.drawn),
@@ -171,8 +171,8 @@ fn value(row: &ValueRow) -> Vec<Line> {
 
 fn stand_in(row: &StandInRow) -> Vec<Line> {
     vec![
-        words(row.function.clone()),
-        words(row.expression.clone()),
+        vec![formula::stated(&row.function)],
+        vec![formula::stated(&row.expression)],
         words(row.unit.clone()),
         origin(row.drawn),
     ]
