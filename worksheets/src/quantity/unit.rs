@@ -21,7 +21,7 @@ const LARGEST_EXPONENT: i64 = 99;
 /// A unit of measurement: its code, its dimension and its factor.
 ///
 /// # Source
-/// [UCUM] The Unified Code for Units of Measure, case-sensitive codes; of its tables those units
+/// \[UCUM\] The Unified Code for Units of Measure, case-sensitive codes; of its tables those units
 /// that mechanics uses.
 ///
 /// ```
