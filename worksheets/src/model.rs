@@ -11,7 +11,6 @@ mod along;
 mod assumption;
 mod body;
 mod check;
-mod condition;
 mod declare;
 mod declared;
 mod error;
@@ -23,7 +22,7 @@ mod vector;
 
 pub use assumption::{Assumption, Origin};
 pub use body::{End, EndChoice, Particle, ParticleChoice};
-pub use condition::Condition;
+pub use cas::Condition;
 pub use declared::{Declared, Role};
 pub use error::ModelError;
 pub use force::{Force, ForceKind, Load, Reaction, ReactionKind};

@@ -5,13 +5,13 @@ use cas::{Expr, Name, sqrt};
 use super::Model;
 use super::body::{End, EndChoice};
 use super::check::Allowed;
-use super::condition::Condition;
 use super::declared::Role;
 use super::error::ModelError;
 use super::force::Load;
 use super::length::{Powers, divided, even_powers, squared_length};
 use super::vector::Vector;
 use crate::quantity::Dimension;
+use cas::Condition;
 
 /// A unit vector, the length of the vector that it was made from, and what must hold for both.
 pub(super) struct Along {

@@ -3,8 +3,8 @@
 use cas::{Expr, Name, Symbol};
 
 use super::body::End;
-use super::condition::Condition;
 use super::vector::Vector;
+use cas::Condition;
 
 /// A vector acting on one particle.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]

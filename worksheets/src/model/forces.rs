@@ -5,12 +5,12 @@ use cas::IntoExpr;
 use super::Model;
 use super::body::{EndChoice, ParticleChoice};
 use super::check::Allowed;
-use super::condition::Condition;
 use super::error::ModelError;
 use super::force::{Force, ForceKind, Load};
 use super::length::squared_length;
 use super::vector::Vector;
 use crate::quantity::Dimension;
+use cas::Condition;
 
 /// The name under which gravity is listed.
 const GRAVITY: &str = "gravity";

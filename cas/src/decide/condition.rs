@@ -1,10 +1,9 @@
-//! Side conditions that a model states about its quantities.
+//! Side conditions: what must hold for a statement to be valid.
 
-use cas::Expr;
+use crate::expr::Expr;
 
 /// Something that must hold for a statement to be valid.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
-#[non_exhaustive]
 pub enum Condition {
     /// The expression is not zero.
     NotZero(Expr),
@@ -15,8 +14,17 @@ pub enum Condition {
 }
 
 impl Condition {
+    /// The expression that the condition is about.
+    #[must_use]
+    pub fn expr(self) -> Expr {
+        match self {
+            Self::NotZero(expr) | Self::NotNegative(expr) | Self::Positive(expr) => expr,
+        }
+    }
+
     /// What is left of the condition where the sign does not matter.
-    pub(super) fn without_sign(self) -> Self {
+    #[must_use]
+    pub fn without_sign(self) -> Self {
         match self {
             Self::Positive(expr) => Self::NotZero(expr),
             other => other,
