@@ -4,6 +4,7 @@
 pub mod model;
 pub mod prelude;
 pub mod quantity;
+pub mod record;
 pub mod reference;
 pub mod sheet;
 pub mod show;

@@ -1,0 +1,25 @@
+//! The record: what was derived, step by step, in a form that can be stored, shown and checked again.
+//!
+//! A [`Step`] is one recorded equality with its rule, what it rests on, its conditions and how it
+//! stands; a [`Derivation`] is an ordered list of steps under a title with a headline; a [`Record`]
+//! joins it with what was stated on the sheet. Everything that is shown of a derivation follows from
+//! the record alone, so whoever reads a stored record can make the same pictures and prove the same
+//! steps without running the worksheet.
+//!
+//! Refused alternative: storing typeset text. It cannot be proved again, and two spellings of one
+//! formula could not be told from two formulas.
+
+mod derivation;
+mod formal;
+mod ground;
+mod rule;
+mod standing;
+mod statement;
+mod written;
+
+pub use derivation::{Derivation, Shown, Tally};
+pub use formal::{Axis, Formal};
+pub use ground::Ground;
+pub use rule::{Rule, Source};
+pub use standing::{Assignment, Standing};
+pub use statement::{Relation, Side, Statement, Step};
