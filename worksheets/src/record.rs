@@ -11,6 +11,7 @@
 
 mod derivation;
 mod formal;
+mod formal_text;
 mod ground;
 mod rule;
 mod standing;
@@ -19,6 +20,9 @@ mod written;
 
 pub use derivation::{Derivation, Shown, Tally};
 pub use formal::{Axis, Formal};
+pub(crate) use formal_text::Bond;
+#[cfg(test)]
+pub(crate) use formal_text::tests::samples as formal_samples;
 pub use ground::Ground;
 pub use rule::{Rule, Source};
 pub use standing::{Assignment, Standing};

@@ -7,6 +7,7 @@ mod bundle;
 mod cells;
 mod display;
 mod escape;
+mod formal;
 mod formula;
 mod html;
 mod latex;
