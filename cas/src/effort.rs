@@ -52,6 +52,9 @@ pub enum Limit {
     /// An exponent is larger than polynomials can hold.
     #[error("an exponent above {0} occurred")]
     Exponent(u32),
+    /// Functions stand in the arguments of functions deeper than allowed.
+    #[error("functions nested more than {0} deep occurred")]
+    Nesting(u32),
     /// The stop flag was set.
     #[error("stopped on request")]
     Stopped,
@@ -70,6 +73,7 @@ impl Limit {
             }
             Self::Bits(_) => "raise `Effort::bits`, or give the constants fewer digits",
             Self::Exponent(_) => "lower the exponent",
+            Self::Nesting(_) => "name the inner functions and treat them separately",
             Self::Stopped => "run it again when there is time",
         }
     }

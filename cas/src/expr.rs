@@ -24,4 +24,5 @@ pub use build::{cos, exp, ln, pi, sin, sqrt, tan};
 pub use node::{Application, Expr, Function, Kind};
 pub use operators::{IntoExpr, exact};
 pub use symbol::{Name, NameError, Symbol};
+pub(crate) use walk::postorder_within;
 pub use walk::{Substitution, postorder};

@@ -4,13 +4,21 @@
 //! number outside one module.
 #![forbid(unsafe_code)]
 
+mod basis;
 pub mod calculus;
+mod canonical;
 pub mod decide;
+mod draw;
 pub mod effort;
+mod evaluate;
 pub mod expr;
+mod fingerprint;
+mod fraction;
 pub mod matrix;
 pub mod number;
 pub mod present;
+mod ring;
+pub mod sample;
 pub mod text;
 
 pub use decide::{Condition, Verdict};

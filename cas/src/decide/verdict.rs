@@ -6,6 +6,7 @@ use super::condition::Condition;
 use crate::effort::Limit;
 use crate::expr::Expr;
 use crate::number::Rational;
+use crate::sample::Interval;
 
 /// What was found about the equality of two expressions.
 ///
@@ -61,8 +62,8 @@ pub struct Witness {
 pub enum Value {
     /// An exact number.
     Exact(Rational),
-    /// A number between two bounds, outward rounded.
-    Between(f64, f64),
+    /// A number in this interval.
+    Within(Interval),
 }
 
 /// Evidence for an equality.
@@ -82,8 +83,6 @@ pub enum Evidence {
     Intervals {
         /// How many points there were.
         points: u32,
-        /// The widest of the intervals of the difference.
-        widest: f64,
     },
 }
 
@@ -97,6 +96,8 @@ pub enum Reason {
     Limit(Limit),
     /// No point was found at which both sides have a value.
     NoPoint,
+    /// The canonical form of the difference is not zero, but no point was found at which it shows.
+    NoWitness,
 }
 
 impl Verdict {
@@ -147,8 +148,7 @@ impl fmt::Display for Value {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         match self {
             Self::Exact(value) => write!(f, "{value}"),
-            // Seven digits: enough to see the difference, few enough to be the same on every machine.
-            Self::Between(low, high) => write!(f, "about {:.6e}", f64::midpoint(*low, *high)),
+            Self::Within(interval) => write!(f, "{interval}"),
         }
     }
 }
@@ -165,7 +165,7 @@ impl fmt::Display for Evidence {
                 "{evaluations} evaluations modulo primes gave zero, which unequal sides do with a chance \
                  below 2^-{chance_exponent}; no proof, because {limit}"
             ),
-            Self::Intervals { points, .. } => write!(
+            Self::Intervals { points } => write!(
                 f,
                 "the intervals of both sides overlap at {points} points; no proof, because roots, exponentials, \
                  logarithms or special angles occur"
@@ -180,6 +180,9 @@ impl fmt::Display for Reason {
             Self::Undefined(part) => write!(f, "`{part}` has no value anywhere"),
             Self::Limit(limit) => write!(f, "{limit}"),
             Self::NoPoint => f.write_str("no point was found at which both sides have a value"),
+            Self::NoWitness => f.write_str(
+                "the difference has terms that do not cancel, but no values were found that show it",
+            ),
         }
     }
 }
@@ -193,6 +196,7 @@ impl Reason {
                 "look for a division by zero, a root of a negative number or a logarithm of zero"
             }
             Self::Limit(limit) => limit.hint(),
+            Self::NoWitness => "substitute values for some of the symbols and compare again",
             Self::NoPoint => "look for a root or a logarithm whose argument is never positive",
         }
     }

@@ -8,6 +8,11 @@ use super::symbol::Symbol;
 /// Every node reachable from `roots` once, parts before the wholes that use them.
 #[must_use]
 pub fn postorder(roots: &[Expr]) -> Vec<Expr> {
+    postorder_within(roots, |_| true)
+}
+
+/// The same without what lies below the nodes that are not to be opened.
+pub(crate) fn postorder_within(roots: &[Expr], opened: impl Fn(Expr) -> bool) -> Vec<Expr> {
     let (mut order, mut seen) = (Vec::new(), HashSet::new());
     let mut stack: Vec<(Expr, bool)> = roots.iter().rev().map(|root| (*root, false)).collect();
     while let Some((expr, parts_done)) = stack.pop() {
@@ -15,7 +20,9 @@ pub fn postorder(roots: &[Expr]) -> Vec<Expr> {
             order.push(expr);
         } else if seen.insert(expr) {
             stack.push((expr, true));
-            stack.extend(expr.children().iter().rev().map(|part| (*part, false)));
+            if opened(expr) {
+                stack.extend(expr.children().iter().rev().map(|part| (*part, false)));
+            }
         }
     }
     order
