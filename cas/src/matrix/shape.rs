@@ -2,6 +2,7 @@
 
 use std::ops::Index;
 
+use crate::effort::Limit;
 use crate::expr::Expr;
 
 /// A rectangular matrix of expressions; either side may have length zero.
@@ -61,6 +62,15 @@ pub enum MatrixError {
         /// Columns of the matrix.
         columns: usize,
     },
+    /// A part of an entry has no value anywhere.
+    #[error("`{part}` has no value")]
+    Undefined {
+        /// The smallest such part.
+        part: Expr,
+    },
+    /// The computation grew beyond what was allowed.
+    #[error(transparent)]
+    TooLarge(#[from] Limit),
 }
 
 impl MatrixError {
@@ -70,6 +80,10 @@ impl MatrixError {
         match self {
             Self::Ragged { .. } => "give every row the same number of entries",
             Self::Shapes { .. } => "look at rows and columns; `transposed` exchanges them",
+            Self::Undefined { .. } => {
+                "look for a division by zero, a root of a negative number or a logarithm of zero"
+            }
+            Self::TooLarge(limit) => limit.hint(),
             Self::NotSquare { .. } => "give as many rows as columns, or ask for the rank",
         }
     }
