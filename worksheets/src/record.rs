@@ -10,20 +10,36 @@
 //! formula could not be told from two formulas.
 
 mod derivation;
+mod entry;
+mod error;
 mod formal;
 mod formal_text;
+mod given;
 mod ground;
+mod reproved;
 mod rule;
+#[cfg(test)]
+mod schema_check;
 mod standing;
 mod statement;
+mod store;
+#[cfg(test)]
+pub(crate) mod tests;
 mod written;
 
 pub use derivation::{Derivation, Shown, Tally};
+pub use entry::{
+    AssumptionEntry, ForceEntry, LoadEntry, ParticleEntry, QuantityEntry, ReactionEntry, RoleEntry,
+};
+pub use error::RecordError;
 pub use formal::{Axis, Formal};
 pub(crate) use formal_text::Bond;
 #[cfg(test)]
 pub(crate) use formal_text::tests::samples as formal_samples;
+pub use given::{given, is_implied};
 pub use ground::Ground;
+pub use reproved::Divergence;
 pub use rule::{Rule, Source};
 pub use standing::{Assignment, Standing};
 pub use statement::{Relation, Side, Statement, Step};
+pub use store::{DerivationEntry, FORMAT, Record, ReferenceEntry, SCHEMA};

@@ -5,20 +5,26 @@
 
 mod bundle;
 mod cells;
+#[cfg(test)]
+mod derivation_tests;
 mod display;
 mod escape;
 mod formal;
 mod formula;
 mod html;
 mod latex;
+mod of_derivation;
 mod of_model;
 mod of_report;
+mod of_step;
 pub mod page;
 mod plain;
 mod plot;
+mod statement;
 mod typeset;
 
 pub use bundle::{Bundle, RECORD_TYPE};
 pub use display::{Bundled, ShowsItself, print};
+pub use of_derivation::{derivation, record};
 pub use of_model::{assumptions_page, model, quantities_page};
 pub use of_report::report;

@@ -34,6 +34,7 @@ macro_rules! advised {
 advised!(
     crate::model::ModelError,
     crate::quantity::UnitError,
+    crate::record::RecordError,
     crate::reference::ReferenceError,
     cas::NumberError,
     cas::NameError,

@@ -3,7 +3,7 @@
 use cas::text::{Arrangement, Scope, plain, read};
 use cas::{Expr, Name, Symbol};
 use serde::de::Error;
-use serde::{Deserialize, Deserializer, Serializer};
+use serde::{Deserialize, Deserializer, Serialize, Serializer};
 
 use crate::model::Condition;
 
@@ -63,11 +63,25 @@ pub(super) mod expr {
     use super::*;
 
     pub(in super::super) fn serialize<S: Serializer>(expr: &Expr, to: S) -> Result<S::Ok, S::Error> {
-        to.serialize_str(&text_of(*expr))
+        Written(*expr).serialize(to)
     }
 
     pub(in super::super) fn deserialize<'de, D: Deserializer<'de>>(from: D) -> Result<Expr, D::Error> {
-        read_expr(&String::deserialize(from)?).map_err(D::Error::custom)
+        Written::deserialize(from).map(|written| written.0)
+    }
+}
+
+/// Three components in plain notation.
+pub(super) mod components {
+    use super::*;
+
+    pub(in super::super) fn serialize<S: Serializer>(vector: &[Expr; 3], to: S) -> Result<S::Ok, S::Error> {
+        to.collect_seq(vector.iter().map(|component| Written(*component)))
+    }
+
+    pub(in super::super) fn deserialize<'de, D: Deserializer<'de>>(from: D) -> Result<[Expr; 3], D::Error> {
+        let [x, y, z] = <[Written; 3]>::deserialize(from)?;
+        Ok([x.0, y.0, z.0])
     }
 }
 
@@ -76,20 +90,16 @@ pub(super) mod rows {
     use super::*;
 
     pub(in super::super) fn serialize<S: Serializer>(rows: &[Vec<Expr>], to: S) -> Result<S::Ok, S::Error> {
-        to.collect_seq(
-            rows.iter()
-                .map(|row| row.iter().copied().map(text_of).collect::<Vec<_>>()),
-        )
+        let row = |row: &Vec<Expr>| row.iter().copied().map(Written).collect::<Vec<_>>();
+        to.collect_seq(rows.iter().map(row))
     }
 
     pub(in super::super) fn deserialize<'de, D: Deserializer<'de>>(
         from: D,
     ) -> Result<Vec<Vec<Expr>>, D::Error> {
-        Vec::<Vec<String>>::deserialize(from)?
-            .iter()
-            .map(|row| row.iter().map(|text| read_expr(text)).collect())
-            .collect::<Result<_, _>>()
-            .map_err(D::Error::custom)
+        let rows = Vec::<Vec<Written>>::deserialize(from)?;
+        let row = |row: Vec<Written>| row.into_iter().map(|written| written.0).collect();
+        Ok(rows.into_iter().map(row).collect())
     }
 }
 
@@ -101,17 +111,70 @@ pub(super) mod conditions {
         conditions: &[Condition],
         to: S,
     ) -> Result<S::Ok, S::Error> {
-        to.collect_seq(conditions.iter().map(|condition| condition_text(*condition)))
+        to.collect_seq(conditions.iter().copied().map(WrittenCondition))
     }
 
     pub(in super::super) fn deserialize<'de, D: Deserializer<'de>>(
         from: D,
     ) -> Result<Vec<Condition>, D::Error> {
-        Vec::<String>::deserialize(from)?
-            .iter()
-            .map(|text| read_condition(text))
-            .collect::<Result<_, _>>()
-            .map_err(D::Error::custom)
+        let conditions = Vec::<WrittenCondition>::deserialize(from)?;
+        Ok(conditions.into_iter().map(|written| written.0).collect())
+    }
+}
+
+/// An expression that is stored as text.
+struct Written(Expr);
+
+impl Serialize for Written {
+    fn serialize<S: Serializer>(&self, to: S) -> Result<S::Ok, S::Error> {
+        let text = readable_text(self.0).map_err(serde::ser::Error::custom)?;
+        to.serialize_str(&text)
+    }
+}
+
+impl<'de> Deserialize<'de> for Written {
+    fn deserialize<D: Deserializer<'de>>(from: D) -> Result<Self, D::Error> {
+        let text = String::deserialize(from)?;
+        read_expr(&text).map(Self).map_err(D::Error::custom)
+    }
+}
+
+/// A condition that is stored as text.
+struct WrittenCondition(Condition);
+
+impl Serialize for WrittenCondition {
+    fn serialize<S: Serializer>(&self, to: S) -> Result<S::Ok, S::Error> {
+        readable_text(self.0.expr()).map_err(serde::ser::Error::custom)?;
+        to.serialize_str(&condition_text(self.0))
+    }
+}
+
+impl<'de> Deserialize<'de> for WrittenCondition {
+    fn deserialize<D: Deserializer<'de>>(from: D) -> Result<Self, D::Error> {
+        let text = String::deserialize(from)?;
+        read_condition(&text).map(Self).map_err(D::Error::custom)
+    }
+}
+
+/// The text of an expression, after it was seen that it reads back as the same.
+fn readable_text(expr: Expr) -> Result<String, String> {
+    let text = text_of(expr);
+    match read(&text, &Scope::open()) {
+        Ok(read) if read == expr => Ok(text),
+        Ok(_) => Err("the text of the expression does not read back as the same".to_owned()),
+        Err(error) => Err(format!(
+            "the text of the expression does not read back: {}",
+            error.what
+        )),
+    }
+}
+
+/// JSON that stands where it should not, short enough for a message.
+pub(super) fn shortened(value: &serde_json::Value) -> String {
+    let text = value.to_string();
+    match text.char_indices().nth(40) {
+        Some((place, _)) => format!("{}...", &text[..place]),
+        None => text,
     }
 }
 

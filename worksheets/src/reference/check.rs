@@ -3,6 +3,7 @@
 use cas::{Effort, Expr, IntoExpr};
 
 use super::{Given, Reference, Report};
+use crate::record::Record;
 use crate::show::{Bundle, Bundled};
 use crate::stop::unless;
 
@@ -66,6 +67,6 @@ impl Check {
 
 impl Bundled for Check {
     fn bundle(&self) -> Bundle {
-        self.report().bundle()
+        Bundle::of_record(&Record::of_reference(&self.reference.model, &self.report()))
     }
 }

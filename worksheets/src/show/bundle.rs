@@ -2,8 +2,10 @@
 
 use std::fmt::Write;
 
-use super::page::Page;
+use super::of_derivation;
+use super::page::{Block, Page, words};
 use super::{html, latex, plain};
+use crate::record::Record;
 
 /// The MIME type of a record.
 pub const RECORD_TYPE: &str = "application/vnd.gudgeon.record+json";
@@ -30,6 +32,23 @@ impl Bundle {
             latex: latex::page(page),
             plain: plain::page(page),
             record: None,
+        }
+    }
+
+    /// The bundle of a record: the page that it yields, and itself.
+    ///
+    /// Where the record cannot be written, the page says why it carries none.
+    #[must_use]
+    pub fn of_record(record: &Record) -> Self {
+        let mut page = of_derivation::record(record);
+        match record.to_json() {
+            Ok(json) => Self::of(&page).with_record(json),
+            Err(error) => {
+                let hint = error.hint();
+                let text = format!("This output carries no record: {error}; {hint}.");
+                page.blocks.push(Block::Sentence(words(text)));
+                Self::of(&page)
+            }
         }
     }
 

@@ -1,10 +1,11 @@
 //! Formulas of expressions in the notation of a sheet.
 
-use cas::Expr;
-use cas::text::{Arrangement, Scope, latex, latex_equation, plain, plain_equation, read};
+use cas::text::{Arrangement, Scope, latex, latex_equation, latex_lines, plain, plain_equation, read};
+use cas::{Expr, Symbol};
 
 use super::page::{Formula, Line, Piece};
 use crate::model::{Condition, Model, Vector};
+use crate::record::{Record, RoleEntry};
 
 /// Display formulas are broken into lines not much wider than this, in em.
 const LINE: usize = 44;
@@ -22,6 +23,26 @@ impl Notation {
                 .with_coordinates(&model.coordinates())
                 .with_dots(model.time()),
         )
+    }
+
+    /// The notation of the model that a record states.
+    pub(super) fn of_record(record: &Record) -> Self {
+        let symbols = |role: RoleEntry| {
+            let entries = record.quantities.iter().filter(move |entry| entry.role == role);
+            entries.map(|entry| Symbol::from(entry.name))
+        };
+        let coordinates: Vec<Symbol> = symbols(RoleEntry::Coordinate).collect();
+        let names = record.quantities.iter().map(|entry| entry.name);
+        let arrangement = Arrangement::of_names(names).with_coordinates(&coordinates);
+        Self(match symbols(RoleEntry::Time).next() {
+            Some(time) => arrangement.with_dots(time),
+            None => arrangement,
+        })
+    }
+
+    /// An expression in plain notation alone.
+    pub(super) fn plain(&self, expr: Expr) -> String {
+        plain(expr, &self.0)
     }
 
     /// An expression on one line.
@@ -43,6 +64,23 @@ impl Notation {
         let blank = Relation { tex: "", plain: "" };
         let broken = self.equation(&nothing, &blank, expr);
         Formula::new(broken.tex.trim(), broken.plain.trim())
+    }
+
+    /// An expression, broken into lines where it is long, and its relation to zero behind the last.
+    pub(super) fn vanishing(&self, left: Expr, relation: &Relation) -> Formula {
+        let lines = latex_lines(left, LINE, &self.0);
+        let end = format!("{} 0", relation.tex);
+        let tex = match lines.as_slice() {
+            [] | [_] => format!("{} {end}", lines.concat()),
+            [first, rest @ ..] => {
+                let rest: Vec<String> = rest.iter().map(|line| format!("&\\quad{{}} {line}")).collect();
+                format!(
+                    "\\begin{{aligned}} & {first} \\\\ {} {end} \\end{{aligned}}",
+                    rest.join(" \\\\ ")
+                )
+            }
+        };
+        Formula::new(tex, format!("{} {} 0", self.plain(left), relation.plain))
     }
 
     /// The components of a vector in a row.

@@ -100,7 +100,8 @@ fn size(text: &str) -> Line {
         line.push(Piece::words(format!("{before} ")));
     }
     match number.split_once('e') {
-        Some((mantissa, exponent)) if exponent.parse::<i32>().is_ok() => {
+        // The text may come from a record that was changed by hand: nothing but digits becomes TeX.
+        Some((mantissa, exponent)) if is_decimal(mantissa) && exponent.parse::<i32>().is_ok() => {
             let factor = if mantissa == "1" {
                 String::new()
             } else {
@@ -114,6 +115,10 @@ fn size(text: &str) -> Line {
         _ => line.push(Piece::words(number)),
     }
     line
+}
+
+fn is_decimal(text: &str) -> bool {
+    !text.is_empty() && text.bytes().all(|byte| byte.is_ascii_digit() || byte == b'.')
 }
 
 fn description(report: &Report) -> String {
@@ -251,6 +256,34 @@ mod tests {
             plain.contains("disagrees") && plain.contains("worst for phi"),
             "{plain}"
         );
+    }
+
+    #[test]
+    fn a_changed_report_brings_no_tex_and_no_tags_into_the_page() {
+        let mut report = sample(Agreement::Agrees);
+        let wicked = "\\href{https://example.invalid}{<script>alert(1)</script>}e-5";
+        report.accelerations.largest = wicked.to_owned();
+        report.motion.energy.tolerance = wicked.to_owned();
+        report.constants[0].symbol = wicked.to_owned();
+        report.constants[0].unit = wicked.to_owned();
+        report.worst_coordinate = wicked.to_owned();
+        report.agreement = Agreement::Disagrees;
+        report.accelerations.agreement = Agreement::Disagrees;
+        let Bundle { html, latex, .. } = report.bundle();
+        assert!(!html.contains("<script>alert") && html.contains("&lt;script&gt;alert"));
+        assert!(!latex.contains("\\href") && latex.contains("textbackslash{}href"));
+    }
+
+    #[test]
+    fn numbers_that_cannot_be_drawn_leave_the_picture_out() {
+        let mut report = sample(Agreement::Agrees);
+        for values in [vec![-1e308, 1e308], vec![0.1], vec![f64::NAN, 0.0]] {
+            report.motion.curves[0].values = values;
+            assert!(!report.bundle().html.contains("data:image"));
+        }
+        report.motion.curves[0].values = vec![0.1, 0.2];
+        report.motion.times = vec![1.0, 1.0];
+        assert!(!report.bundle().html.contains("data:image"));
     }
 
     #[test]

@@ -15,6 +15,11 @@ use crate::reference::Curve;
 const WIDTH: u32 = 1472;
 const PANEL_HEIGHT: u32 = 380;
 const FOOT_HEIGHT: u32 = 52;
+/// No number of a motion comes near, and the axes stay far from overflow.
+const LARGEST: f64 = 1e100;
+
+const MOST_CURVES: usize = 64;
+
 const FONT: &str = "system-ui, sans-serif";
 
 /// Contrast above 4 : 1 on white and on #111.
@@ -35,7 +40,7 @@ pub(super) fn motion(times: &[f64], curves: &[Curve]) -> String {
     let (Some(first), Some(last)) = (times.first(), times.last()) else {
         return svg;
     };
-    if times.len() < 2 || count == 0 {
+    if times.len() < 2 || count == 0 || !can_be_drawn(times, curves) {
         return svg;
     }
     let drawn = {
@@ -58,6 +63,14 @@ pub(super) fn motion(times: &[f64], curves: &[Curve]) -> String {
     };
     // Drawing into a string fails only where formatting does, and then there is no picture.
     if drawn.is_err() { String::new() } else { svg }
+}
+
+/// Whether the numbers are such as a run gives: they may come from a record that was changed by hand.
+fn can_be_drawn(times: &[f64], curves: &[Curve]) -> bool {
+    let modest = |value: &f64| value.abs() <= LARGEST;
+    let rising = times.windows(2).all(|pair| pair[0] < pair[1]);
+    let fits = |curve: &Curve| curve.values.len() == times.len() && curve.values.iter().all(modest);
+    rising && times.iter().all(modest) && curves.len() <= MOST_CURVES && curves.iter().all(fits)
 }
 
 fn style(size: f64, color: RGBColor) -> TextStyle<'static> {
