@@ -1,6 +1,7 @@
 //! Analytical mechanics for notebook cells.
 #![forbid(unsafe_code)]
 
+pub mod derive;
 pub mod model;
 pub mod prelude;
 pub mod quantity;

@@ -16,6 +16,7 @@ mod declared;
 mod error;
 mod force;
 mod forces;
+mod held;
 mod length;
 mod reactions;
 mod vector;
@@ -31,6 +32,7 @@ pub use vector::{Vector, vector};
 use std::collections::BTreeSet;
 
 use cas::calculus::Rates;
+use cas::text::Arrangement;
 use cas::{Expr, Name, Symbol};
 
 /// Everything that was stated on a sheet.
@@ -117,6 +119,14 @@ impl Model {
     #[must_use]
     pub fn rates(&self) -> Rates {
         Rates::primed(&self.coordinates(), 2).with(self.time(), 1)
+    }
+
+    /// How the expressions of the sheet are written: names in order of declaration, dots for rates.
+    #[must_use]
+    pub fn arrangement(&self) -> Arrangement {
+        Arrangement::of_names(self.quantities.iter().map(Declared::name))
+            .with_coordinates(&self.coordinates())
+            .with_dots(self.time())
     }
 
     /// Refuses a model from which nothing can be derived.

@@ -4,9 +4,11 @@
 //! means and what it refuses. Every one of them panics, to stop the cell, where `Model` returns
 //! an error.
 
-use cas::{Expr, IntoExpr};
+use cas::{Effort, Expr, IntoExpr};
 
+use crate::derive::{self, Derived, Motion};
 use crate::model::{EndChoice, Model, Particle, ParticleChoice, Vector};
+use crate::reference::{Check, Reference};
 use crate::stop::unless;
 
 /// The model and the record of everything derived from it.
@@ -128,5 +130,84 @@ impl Sheet {
     /// See [`Model::assume`].
     pub fn assume<const N: usize>(&mut self, text: &str, affects: [&str; N]) {
         unless(self.model.assume(text, &affects));
+    }
+
+    /// See [`derive::velocities`].
+    #[must_use]
+    pub fn velocities(&self) -> Derived {
+        unless(derive::velocities(&self.model, &Effort::default()))
+    }
+
+    /// See [`derive::identities`].
+    #[must_use]
+    pub fn identities(&self) -> Derived {
+        unless(derive::identities(&self.model, &Effort::default()))
+    }
+
+    /// See [`derive::jacobian`].
+    #[must_use]
+    pub fn jacobian(&self) -> Derived {
+        unless(derive::jacobian(&self.model, &Effort::default()))
+    }
+
+    /// See [`derive::newton`].
+    #[must_use]
+    pub fn newton(&self) -> Derived {
+        unless(derive::newton(&self.model, &Effort::default()))
+    }
+
+    /// See [`derive::projection`].
+    #[must_use]
+    pub fn projection(&self) -> Derived {
+        unless(derive::projection(&self.model, &Effort::default()))
+    }
+
+    /// See [`derive::virtual_work`].
+    #[must_use]
+    pub fn virtual_work(&self) -> Derived {
+        unless(derive::virtual_work(&self.model, &Effort::default()))
+    }
+
+    /// See [`derive::reduction`].
+    #[must_use]
+    pub fn reduction(&self) -> Derived {
+        unless(derive::reduction(&self.model, &Effort::default()))
+    }
+
+    /// See [`derive::generalized_forces`].
+    #[must_use]
+    pub fn generalized_forces(&self) -> Derived {
+        unless(derive::generalized_forces(&self.model, &Effort::default()))
+    }
+
+    /// See [`derive::potential`].
+    #[must_use]
+    pub fn potential(&self) -> Derived {
+        unless(derive::potential(&self.model, &Effort::default()))
+    }
+
+    /// See [`derive::lagrangian`].
+    #[must_use]
+    pub fn lagrangian(&self) -> Derived {
+        unless(derive::lagrangian(&self.model, &Effort::default()))
+    }
+
+    /// See [`derive::equations`].
+    #[must_use]
+    pub fn equations(&self) -> Motion {
+        unless(derive::equations(&self.model, &Effort::default()))
+    }
+
+    /// See [`derive::mass_matrix`].
+    #[must_use]
+    pub fn mass_matrix(&self) -> Derived {
+        let motion = self.equations();
+        unless(derive::mass_matrix(&self.model, &motion, &Effort::default()))
+    }
+
+    /// The numerical reference for the equations of motion: see [`Check`].
+    #[must_use]
+    pub fn reference(&self) -> Check {
+        Check::new(Reference::new(&self.model, self.equations().for_reference()))
     }
 }

@@ -32,6 +32,7 @@ macro_rules! advised {
 }
 
 advised!(
+    crate::derive::DeriveError,
     crate::model::ModelError,
     crate::quantity::UnitError,
     crate::record::RecordError,

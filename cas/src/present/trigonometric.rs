@@ -50,16 +50,22 @@ pub(super) fn shortest(angles: &[Angle], terms: Vec<Term>) -> Vec<(Wave, Rationa
     let mut best = products;
     for place in 0..angles.len() {
         let other = with_squared_sines(&best, place);
-        if other.len() < best.len() {
+        if reading_cost(&other) < reading_cost(&best) {
             best = other;
         }
     }
     let sums = as_sums(&best);
-    if sums.len() < best.len() {
+    if reading_cost(&sums) < reading_cost(&best) {
         sums
     } else {
         as_waves(best)
     }
+}
+
+/// Fewer terms first, then fewer minus signs.
+fn reading_cost<T>(terms: &[(T, Rational)]) -> (usize, usize) {
+    let negative = terms.iter().filter(|(_, coefficient)| coefficient.is_negative());
+    (terms.len(), negative.count())
 }
 
 /// The same with `c^2 = 1 - s^2` applied to one angle as often as it can be.

@@ -124,7 +124,11 @@ impl Record {
             reactions: reactions
                 .map(|reaction| ReactionEntry::of(model, reaction))
                 .collect(),
-            assumptions: model.assumptions().iter().map(AssumptionEntry::from).collect(),
+            assumptions: model
+                .register_of_assumptions()
+                .iter()
+                .map(AssumptionEntry::from)
+                .collect(),
             derivation: None,
             steps: Vec::new(),
             reference: None,

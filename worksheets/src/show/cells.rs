@@ -5,7 +5,9 @@ use super::display::{Bundled, print};
 use super::formula::Notation;
 use super::of_model;
 use super::page::{Block, Line, Page, Piece};
+use crate::derive::{Derived, Motion};
 use crate::model::{Model, Particle, Vector};
+use crate::record::Record;
 use crate::reference::{Check, Report};
 use crate::sheet::Sheet;
 
@@ -24,6 +26,18 @@ impl Bundled for Model {
 impl Bundled for Sheet {
     fn bundle(&self) -> Bundle {
         self.model().bundle()
+    }
+}
+
+impl Bundled for Derived {
+    fn bundle(&self) -> Bundle {
+        Bundle::of_record(&Record::of(self.model(), self.derivation()))
+    }
+}
+
+impl Bundled for Motion {
+    fn bundle(&self) -> Bundle {
+        (**self).bundle()
     }
 }
 
@@ -65,7 +79,9 @@ macro_rules! shows_itself {
     };
 }
 
-shows_itself!(Page, Model, Sheet, Vector, Particle, Report, Check);
+shows_itself!(
+    Page, Model, Sheet, Derived, Motion, Vector, Particle, Report, Check
+);
 
 impl Sheet {
     /// The table of quantities: symbols, meanings, units, parts in the model.

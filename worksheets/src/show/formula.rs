@@ -17,12 +17,7 @@ pub(super) struct Notation(Arrangement);
 impl Notation {
     /// The notation of a model.
     pub(super) fn of(model: &Model) -> Self {
-        let names = model.quantities().iter().map(|declared| declared.name());
-        Self(
-            Arrangement::of_names(names)
-                .with_coordinates(&model.coordinates())
-                .with_dots(model.time()),
-        )
+        Self(model.arrangement())
     }
 
     /// The notation of the model that a record states.

@@ -24,9 +24,10 @@ pub fn model(model: &Model) -> Page {
     if let Some(line) = conditions(model, &notation) {
         blocks.push(Block::Sentence(line));
     }
-    if !model.assumptions().is_empty() {
+    let assumptions = model.register_of_assumptions();
+    if !assumptions.is_empty() {
         blocks.push(heading("Assumptions"));
-        blocks.push(register(model.assumptions()));
+        blocks.push(register(&assumptions));
     }
     Page {
         title: model.title().to_owned(),
@@ -48,11 +49,11 @@ pub fn quantities_page(model: &Model) -> Page {
 /// The page of the assumption register.
 #[must_use]
 pub fn assumptions_page(model: &Model) -> Page {
-    let entries = model.assumptions();
+    let entries = model.register_of_assumptions();
     let blocks = if entries.is_empty() {
         vec![Block::Sentence(words("No assumptions are stated on this sheet."))]
     } else {
-        vec![register(entries)]
+        vec![register(&entries)]
     };
     Page {
         title: "Assumption register".to_owned(),
