@@ -107,7 +107,7 @@ pub fn mass_matrix(model: &Model, motion: &Motion, effort: &Effort) -> Result<De
     ]);
     stage.show(Statement::law(
         Side::named(equation, Expr::zero()),
-        Side::named(Formal::Zero, Expr::zero()),
+        Side::of(Expr::zero()),
     ));
     invertible(&mut stage, mass_matrix)?;
     Ok(Derived::new(model, stage.derivation))

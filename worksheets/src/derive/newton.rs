@@ -6,7 +6,7 @@ use super::kinematics::{Component, Kinematics, along};
 use super::stage::{Stage, listed};
 use super::{DeriveError, Derived};
 use crate::model::Model;
-use crate::record::{Formal, Ground, Rule, Side, Statement};
+use crate::record::{Formal, Ground, Rule, Shown, Side, Statement};
 
 /// What acts on one component of one particle: the sum, its name, and what it rests on.
 struct Acting {
@@ -143,11 +143,16 @@ pub fn projection(model: &Model, effort: &Effort) -> Result<Derived, DeriveError
         stage.show(Statement::law(Side::of(shown), Side::of(applied + reactions)));
     }
     if !model.reactions().is_empty() {
-        let names = model.reactions().iter().map(|reaction| reaction.name());
-        stage.note(format!(
-            "The reactions {} are still in these equations.",
-            listed(names)
-        ));
+        let shown = stage.derivation.headline.iter().any(|shown| match shown {
+            Shown::Statement { statement } => holds_reaction(model, statement.right.value),
+            Shown::Matrix { .. } | Shown::Words { .. } => false,
+        });
+        let names = listed(model.reactions().iter().map(|reaction| reaction.name()));
+        stage.note(if shown {
+            format!("The reactions {names} are projected like the applied forces; those that are left stand above.")
+        } else {
+            format!("The reactions {names} are projected like the applied forces; their terms cancel.")
+        });
     }
     Ok(Derived::new(model, stage.derivation))
 }
@@ -155,4 +160,13 @@ pub fn projection(model: &Model, effort: &Effort) -> Result<Derived, DeriveError
 /// `sum m r'' . dr/dq`.
 pub(super) fn projected_inertia(kinematics: &Kinematics, coordinate: usize) -> Expr {
     kinematics.projected(coordinate, |component| component.mass * component.acceleration)
+}
+
+/// Whether the magnitude of a reaction occurs.
+fn holds_reaction(model: &Model, expr: Expr) -> bool {
+    let symbols = expr.symbols();
+    model
+        .reactions()
+        .iter()
+        .any(|reaction| symbols.contains(&reaction.magnitude()))
 }
