@@ -11,10 +11,15 @@ pub(crate) trait Field: Clone + Sized {
     /// The value of a rational number, where it has one.
     fn of(value: &Rational) -> Option<Self>;
     fn sum(&self, other: &Self) -> Self;
-    fn product(&self, other: &Self) -> Self;
+    /// The product, `None` where it is larger than is worth its time.
+    fn product(&self, other: &Self) -> Option<Self>;
     /// One over the value, `None` for zero.
     fn inverse(&self) -> Option<Self>;
 }
+
+/// Exact values above this many bits are given up: a witness of that size tells nobody anything, and
+/// a power such as `x^999999999` would take for ever.
+const MOST_BITS: u64 = 65_536;
 
 impl Field for Rational {
     fn of(value: &Rational) -> Option<Self> {
@@ -25,8 +30,8 @@ impl Field for Rational {
         self + other
     }
 
-    fn product(&self, other: &Self) -> Self {
-        self * other
+    fn product(&self, other: &Self) -> Option<Self> {
+        (self.bits() + other.bits() <= MOST_BITS).then(|| self * other)
     }
 
     fn inverse(&self) -> Option<Self> {
@@ -50,7 +55,7 @@ pub(crate) fn values<F: Field>(basis: &Basis, roots: &[Expr], variables: &[Optio
                     .fold(done[&terms[0]].clone(), |sum, term| sum.sum(&done[term])),
                 Kind::Product(factors) => factors
                     .iter()
-                    .fold(one.clone(), |product, factor| product.product(&done[factor])),
+                    .try_fold(one.clone(), |product, factor| product.product(&done[factor]))?,
                 Kind::Power(base, exponent) => power(&done[base], exponent.as_integer()?)?,
                 Kind::Number(value) => F::of(value)?,
                 _ => return None,
@@ -81,38 +86,40 @@ fn leaf_value<F: Field>(basis: &Basis, leaf: &Leaf, variables: &[Option<F>]) -> 
                 let cosine = basis.angles[*angle].cosine;
                 let (c, s) = (variables[cosine].clone()?, variables[cosine + 1].clone()?);
                 let mut square = if *count < 0 {
-                    [c, s.product(&minus)]
+                    [c, s.product(&minus)?]
                 } else {
                     [c, s]
                 };
                 let mut rest = count.unsigned_abs();
                 while rest > 0 {
                     if rest & 1 == 1 {
-                        turned = turn(&turned, &square, &minus);
+                        turned = turn(&turned, &square, &minus)?;
                     }
-                    square = turn(&square, &square, &minus);
                     rest >>= 1;
+                    if rest > 0 {
+                        square = turn(&square, &square, &minus)?;
+                    }
                 }
             }
             for _ in 0..*quarters {
-                turned = turn(&turned, &[zero.clone(), one.clone()], &minus);
+                turned = turn(&turned, &[zero.clone(), one.clone()], &minus)?;
             }
             let [cosine, sine] = turned;
             match function {
                 Function::Cosine => Some(cosine),
                 Function::Sine => Some(sine),
-                Function::Tangent => Some(sine.product(&cosine.inverse()?)),
+                Function::Tangent => sine.product(&cosine.inverse()?),
                 _ => None,
             }
         }
     }
 }
 
-fn turn<F: Field>([c, s]: &[F; 2], [d, t]: &[F; 2], minus: &F) -> [F; 2] {
-    [
-        c.product(d).sum(&s.product(t).product(minus)),
-        s.product(d).sum(&c.product(t)),
-    ]
+fn turn<F: Field>([c, s]: &[F; 2], [d, t]: &[F; 2], minus: &F) -> Option<[F; 2]> {
+    Some([
+        c.product(d)?.sum(&s.product(t)?.product(minus)?),
+        s.product(d)?.sum(&c.product(t)?),
+    ])
 }
 
 fn power<F: Field>(base: &F, exponent: i64) -> Option<F> {
@@ -124,11 +131,11 @@ fn power<F: Field>(base: &F, exponent: i64) -> Option<F> {
     let (mut result, mut rest) = (F::of(&Rational::ONE)?, exponent.unsigned_abs());
     while rest > 0 {
         if rest & 1 == 1 {
-            result = result.product(&square);
+            result = result.product(&square)?;
         }
         rest >>= 1;
         if rest > 0 {
-            square = square.product(&square);
+            square = square.product(&square)?;
         }
     }
     Some(result)

@@ -32,8 +32,8 @@ impl Field for Residue {
         Self((self.0 + other.0) % PRIME)
     }
 
-    fn product(&self, other: &Self) -> Self {
-        Self(multiplied_modulo(self.0, other.0, PRIME))
+    fn product(&self, other: &Self) -> Option<Self> {
+        Some(Self(multiplied_modulo(self.0, other.0, PRIME)))
     }
 
     fn inverse(&self) -> Option<Self> {
@@ -102,11 +102,11 @@ fn point(basis: &Basis, draw: &mut Draw) -> Vec<Option<Residue>> {
 /// The point `((1 - t^2) / (1 + t^2), 2 t / (1 + t^2))` of the unit circle.
 pub(crate) fn circle_point<F: Field>(t: &F) -> Option<[F; 2]> {
     let (one, minus) = (F::of(&Rational::ONE)?, F::of(&(-1).into())?);
-    let square = t.product(t);
+    let square = t.product(t)?;
     let below = one.sum(&square).inverse()?;
     Some([
-        one.sum(&square.product(&minus)).product(&below),
-        t.sum(t).product(&below),
+        one.sum(&square.product(&minus)?).product(&below)?,
+        t.sum(t).product(&below)?,
     ])
 }
 

@@ -163,8 +163,19 @@ impl<'a> Ring<'a> {
             let result = if odd { value } else { value.absolute() };
             return Ok(self.constant(if exponent == 0 { Rational::ONE } else { result }));
         }
-        // Multiplying one by one keeps sparse powers cheaper than squaring does; every base but those
-        // above runs into a limit on exponents, terms or bits.
+        if let Some(value) = base.as_constant() {
+            // A lower bound, so that a power far beyond the limit is not approached one by one.
+            let least = value.bits().saturating_sub(2).max(1);
+            self.meter.allow_bits(least.saturating_mul(exponent.into()))?;
+            let power = i32::try_from(exponent)
+                .ok()
+                .and_then(|exponent| value.power(exponent));
+            return power
+                .map(|power| self.constant(power))
+                .ok_or(Limit::Bits(self.meter.effort().bits));
+        }
+        // Multiplying one by one keeps sparse powers cheaper than squaring does; every base but numbers
+        // runs into a limit on exponents, terms or bits.
         let mut result = self.constant(Rational::ONE);
         for _ in 0..exponent {
             result = self.product(&result, base)?;

@@ -22,9 +22,35 @@ pub struct Reference {
     pub largest_deviation: String,
     /// What was allowed.
     pub tolerance: String,
-    /// Whether the deviation is within the tolerance.
-    pub agrees: bool,
+    /// What follows.
+    pub finding: Finding,
 }
+
+/// What a comparison with the numerical reference found, the better first.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
+pub enum Finding {
+    /// Everything is within the tolerance.
+    Agrees,
+    /// The numbers cannot tell.
+    NotConclusive,
+    /// Something differs by more than the tolerance.
+    Disagrees,
+}
+
+impl Finding {
+    /// The finding in words.
+    #[must_use]
+    pub fn words(self) -> &'static str {
+        match self {
+            Self::Agrees => "agrees",
+            Self::NotConclusive => "is not conclusive",
+            Self::Disagrees => "does not agree",
+        }
+    }
+}
+
+/// The kind of a step that is a definition or a law and needs no verdict.
+const STATED: &str = "Stated";
 
 impl Facts {
     /// Adds what one output says, if it holds a record.
@@ -55,7 +81,11 @@ impl Facts {
             let found = Reference {
                 largest_deviation: text("largest_deviation"),
                 tolerance: text("tolerance"),
-                agrees,
+                finding: match (agrees, &reference["report"]["agreement"]) {
+                    (true, _) => Finding::Agrees,
+                    (false, Value::String(word)) if word == "not_conclusive" => Finding::NotConclusive,
+                    (false, _) => Finding::Disagrees,
+                },
             };
             if !self.references.contains(&found) {
                 self.references.push(found);
@@ -69,10 +99,16 @@ impl Facts {
         self.verdicts.values().filter(|verdict| *verdict == kind).count()
     }
 
-    /// How many steps there are.
+    /// How many steps have a verdict.
     #[must_use]
     pub fn steps(&self) -> usize {
-        self.verdicts.len()
+        self.verdicts.len() - self.stated()
+    }
+
+    /// How many definitions and laws are stated, which need no verdict.
+    #[must_use]
+    pub fn stated(&self) -> usize {
+        self.steps_with(STATED)
     }
 
     /// The distinct side conditions, in order of their text.
@@ -87,22 +123,25 @@ impl Facts {
         let size = |reference: &Reference| {
             reference
                 .largest_deviation
-                .parse::<f64>()
+                // `below 1e-11` bounds the deviation.
+                .rsplit(' ')
+                .next()
                 // What is no number deviates beyond all bounds.
-                .ok()
+                .and_then(|number| number.parse::<f64>().ok())
                 .filter(|size| !size.is_nan())
                 .unwrap_or(f64::INFINITY)
         };
         self.references.iter().max_by(|left, right| {
-            let worse = (!left.agrees).cmp(&!right.agrees);
+            let worse = left.finding.cmp(&right.finding);
             worse.then(size(left).total_cmp(&size(right)))
         })
     }
 
-    /// Whether no step is refuted and every reference run agrees.
+    /// Whether no step is refuted and no reference run disagrees.
     #[must_use]
     pub fn hold(&self) -> bool {
-        self.steps_with("Refuted") == 0 && self.references.iter().all(|reference| reference.agrees)
+        let disagrees = |reference: &Reference| reference.finding == Finding::Disagrees;
+        self.steps_with("Refuted") == 0 && !self.references.iter().any(disagrees)
     }
 }
 
@@ -134,6 +173,16 @@ mod tests {
     }
 
     #[test]
+    fn definitions_and_laws_count_apart() {
+        let mut facts = Facts::default();
+        facts.add_output(&output(json!({"steps": [
+            {"key": "a", "verdict": {"kind": "Stated"}},
+            {"key": "b", "verdict": {"kind": "Proved"}}]})));
+        assert_eq!((facts.steps(), facts.stated()), (1, 1));
+        assert!(facts.hold());
+    }
+
+    #[test]
     fn a_reference_that_disagrees_is_the_worst() {
         let reference = |deviation: &str, agrees: bool| {
             output(json!({"reference": {
@@ -143,6 +192,13 @@ mod tests {
         facts.add_output(&reference("1.2e-12", true));
         facts.add_output(&reference("3e-10", true));
         assert_eq!(facts.worst_reference().unwrap().largest_deviation, "3e-10");
+        assert!(facts.hold());
+        facts.add_output(&reference("below 1e-9", true));
+        assert_eq!(facts.worst_reference().unwrap().largest_deviation, "below 1e-9");
+        let mut open = reference("1e-12", false);
+        open["data"][RECORD]["reference"]["report"] = json!({"agreement": "not_conclusive"});
+        facts.add_output(&open);
+        assert_eq!(facts.worst_reference().unwrap().finding, Finding::NotConclusive);
         assert!(facts.hold());
         facts.add_output(&reference("1e-11", false));
         assert_eq!(facts.worst_reference().unwrap().largest_deviation, "1e-11");

@@ -16,6 +16,8 @@ mod formal;
 mod formal_text;
 mod given;
 mod ground;
+#[cfg(test)]
+mod hostile_tests;
 mod reproved;
 mod rule;
 #[cfg(test)]

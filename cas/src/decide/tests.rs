@@ -182,3 +182,26 @@ fn verdicts_are_the_same_every_time() {
     let (left, right) = (sin(x + y), sin(x) + sin(y));
     assert_eq!(verdict(left, right), verdict(left, right));
 }
+
+#[test]
+fn enormous_powers_are_given_up_instead_of_computed() {
+    let [x, ..] = symbols();
+    let nine = Expr::from(9).power(999_999_999);
+    let expected = Verdict::Undecided(Reason::Limit(Limit::Bits(Effort::default().bits)));
+    assert_eq!(verdict(nine, 10 * nine), expected);
+    assert_eq!(verdict(1 / nine, nine), expected);
+    // Refuted or left open, but soon and never proved.
+    for large in [
+        x.power(999_999_999),
+        x.power(-99_999_999),
+        sin(999_999_999 * x) + sin(x),
+    ] {
+        assert!(!verdict(large, x.squared()).is_proved(), "{large}");
+    }
+    // Powers below the limits are computed as before.
+    let small = Expr::from(3).power(20_000);
+    proved(
+        (x + small).squared(),
+        x.squared() + 2 * small * x + small.squared(),
+    );
+}

@@ -128,6 +128,9 @@ impl Outcome {
         let kinds = ["Proved", "Refuted", "Supported", "Undecided"]
             .map(|kind| format!("{kind} {}", facts.steps_with(kind)));
         line("steps", format!("{}: {}", facts.steps(), kinds.join(", ")));
+        if facts.stated() > 0 {
+            line("", format!("and {} definitions and laws", facts.stated()));
+        }
         let conditions = facts.conditions();
         line("side conditions", conditions.len().to_string());
         for condition in conditions {
@@ -136,11 +139,7 @@ impl Outcome {
         let reference = facts.worst_reference().map_or_else(
             || "none".to_owned(),
             |reference| {
-                let word = if reference.agrees {
-                    "agrees"
-                } else {
-                    "does not agree"
-                };
+                let word = reference.finding.words();
                 format!(
                     "{word}; largest deviation {} (tolerance {})",
                     reference.largest_deviation, reference.tolerance
