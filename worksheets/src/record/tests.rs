@@ -99,6 +99,21 @@ pub(crate) fn pendulum() -> (Model, Derivation, DerivedMotion) {
     (model, derivation, motion)
 }
 
+#[test]
+fn a_reference_run_carries_its_record() {
+    use crate::reference::Check;
+    use crate::show::{Bundle, Bundled};
+    let (model, _, motion) = pendulum();
+    let mut check = Check::new(Reference::new(&model, motion));
+    check.run("1 s");
+    let bundle = check.bundle();
+    let record = Record::from_json(bundle.record.as_deref().expect("a record")).expect("can be read");
+    let reference = record.reference.as_ref().expect("a reference");
+    assert!(reference.agrees);
+    assert_eq!(reference.report, check.report());
+    assert_eq!(Bundle::of_record(&record), bundle);
+}
+
 fn stored() -> Record {
     let (model, derivation, motion) = pendulum();
     let mut reference = Reference::new(&model, motion);

@@ -249,3 +249,52 @@ fn a_changed_record_brings_no_tags_and_no_tex_into_the_page() {
 fn x_name() -> cas::Name {
     cas::Name::new("x_1").expect("a valid name")
 }
+
+#[test]
+fn chains_of_equalities_break_where_they_are_long() {
+    let (model, mut made, _) = pendulum();
+    let names = ["a", "b", "c", "d"].map(|name| Expr::symbol(name).expect("a valid name"));
+    let long: Expr = (1..=40).map(|power| names[0] * cos(names[1]).power(power)).sum();
+    let short = names[2] + names[3];
+    let named = |value: Expr| Side::named(Formal::Lagrangian, value);
+    let wide = Formal::sum(vec![Formal::kinetic_energy(); 20]);
+    let statements = [
+        Statement::equal(Side::of(long), Side::of(short)),
+        Statement::equal(Side::of(short), Side::of(long)),
+        Statement::equal(Side::of(long), Side::of(long + 1)),
+        Statement::equal(named(long), Side::of(short)),
+        Statement::equal(named(short), Side::of(long)),
+        Statement::equal(Side::of(short), named(long)),
+        Statement::equal(Side::named(wide.clone(), long), Side::of(long + 1)),
+        Statement::equal(named(long), Side::named(wide.clone(), long)),
+        Statement::equal(named(long), Side::named(wide, short)),
+        Statement::differs(named(short), Side::of(names[0])),
+        Statement::defined(Formal::Lagrangian, short),
+    ];
+    for statement in statements {
+        made.headline = vec![statement.clone().into()];
+        let page = page_of(&model, &made);
+        let mut formulas = page.blocks.iter().filter_map(|block| match block {
+            Block::Result(formula) => Some(formula),
+            _ => None,
+        });
+        let shown: Vec<_> = formulas.by_ref().collect();
+        assert!(!shown.is_empty());
+        for formula in &shown {
+            assert!(
+                super::typeset::mathml(&formula.tex, true).is_some(),
+                "{}",
+                formula.tex
+            );
+        }
+        let plain = shown
+            .iter()
+            .map(|formula| formula.plain.as_str())
+            .collect::<Vec<_>>()
+            .join("\n");
+        for side in [&statement.left, &statement.right] {
+            let value = cas::text::plain(side.value, &model.arrangement());
+            assert!(plain.contains(&value), "{value} is missing in {plain}");
+        }
+    }
+}

@@ -10,6 +10,12 @@ use crate::record::{Record, RoleEntry};
 /// Display formulas are broken into lines not much wider than this, in em.
 const LINE: usize = 44;
 
+/// A chain of equalities stands on one line up to this many characters of plain notation.
+const ONE_LINE: usize = 76;
+
+/// What is longer than this begins a line of its own, and what follows is set in.
+const SHORT: usize = 30;
+
 /// How the expressions of a sheet are written: names in order of declaration, dots for rates.
 #[derive(Clone, Debug, Default)]
 pub(super) struct Notation(Arrangement);
@@ -61,21 +67,56 @@ impl Notation {
         Formula::new(broken.tex.trim(), broken.plain.trim())
     }
 
-    /// An expression, broken into lines where it is long, and its relation to zero behind the last.
-    pub(super) fn vanishing(&self, left: Expr, relation: &Relation) -> Formula {
-        let lines = latex_lines(left, LINE, &self.0);
-        let end = format!("{} 0", relation.tex);
-        let tex = match lines.as_slice() {
-            [] | [_] => format!("{} {end}", lines.concat()),
-            [first, rest @ ..] => {
-                let rest: Vec<String> = rest.iter().map(|line| format!("&\\quad{{}} {line}")).collect();
-                format!(
-                    "\\begin{{aligned}} & {first} \\\\ {} {end} \\end{{aligned}}",
-                    rest.join(" \\\\ ")
-                )
-            }
+    /// What is equal to one expression after the other: on one line where it fits, else each
+    /// expression on lines of its own.
+    pub(super) fn chain(&self, head: Head<'_>, members: &[(&Relation, Expr)]) -> Formula {
+        let first = match head {
+            Head::Name(name) => name.clone(),
+            Head::Expr(expr) => self.formula(expr),
         };
-        Formula::new(tex, format!("{} {} 0", self.plain(left), relation.plain))
+        let lines: Vec<Vec<String>> = members
+            .iter()
+            .map(|(_, expr)| latex_lines(*expr, LINE, &self.0))
+            .collect();
+        let plains: Vec<String> = members
+            .iter()
+            .map(|(relation, expr)| format!("{} {}", relation.plain, self.plain(*expr)))
+            .collect();
+        let size = |text: &str| text.chars().count();
+        let beside = size(&first.plain) <= SHORT;
+        let short = size(&first.plain) + plains.iter().map(|text| size(text) + 1).sum::<usize>() <= ONE_LINE;
+        let alone = beside && members.len() == 1;
+        let mut plain = first.plain.clone();
+        for (place, text) in plains.iter().enumerate() {
+            let on_this_line = short || (beside && place == 0);
+            plain.push_str(if on_this_line { " " } else { "\n  " });
+            plain.push_str(text);
+        }
+
+        if lines.iter().all(|lines| lines.len() == 1) && (short || alone) {
+            let tex = members
+                .iter()
+                .zip(&lines)
+                .map(|((relation, _), lines)| format!(" {} {}", relation.tex, lines.concat()));
+            return Formula::new(first.tex + &tex.collect::<String>(), plain);
+        }
+        let mut rows: Vec<String> = Vec::new();
+        match head {
+            _ if beside => rows.push(format!("{} {{}}&", first.tex)),
+            Head::Name(name) => rows.push(format!("& {}", name.tex)),
+            Head::Expr(expr) => rows.extend(set_in(&latex_lines(expr, LINE, &self.0), "&", "&\\qquad{}")),
+        }
+        for (place, ((relation, _), lines)) in members.iter().zip(&lines).enumerate() {
+            let sign = relation.tex;
+            let start = match (beside, place) {
+                (true, 0) => format!("{} {sign}", rows.pop().unwrap_or_default()),
+                (true, _) => format!("& {sign}"),
+                (false, _) => format!("&\\quad{{}} {sign}"),
+            };
+            rows.extend(set_in(lines, &start, "&\\qquad{}"));
+        }
+        let tex = format!("\\begin{{aligned}} {} \\end{{aligned}}", rows.join(" \\\\ "));
+        Formula::new(tex, plain)
     }
 
     /// The components of a vector in a row.
@@ -124,6 +165,21 @@ impl Notation {
         line.push(Piece::words("."));
         line
     }
+}
+
+/// Rows of an alignment: the first line after its start, the others set in.
+fn set_in(lines: &[String], start: &str, inset: &str) -> Vec<String> {
+    let rows = lines.iter().enumerate();
+    rows.map(|(place, line)| format!("{} {line}", if place == 0 { start } else { inset }))
+        .collect()
+}
+
+/// What a chain of equalities begins with.
+pub(super) enum Head<'a> {
+    /// A name.
+    Name(&'a Formula),
+    /// An expression.
+    Expr(Expr),
 }
 
 /// A sign between two sides.

@@ -5,7 +5,7 @@ use std::collections::HashMap;
 use cas::{Expr, Kind, postorder};
 
 use super::formal;
-use super::formula::{Notation, Relation};
+use super::formula::{Head, Notation, Relation};
 use super::page::{Block, Formula, Piece, words};
 use crate::record::{Formal, Relation as Stated, Side, Statement};
 
@@ -14,9 +14,6 @@ const MOST_SHOWN: usize = 200;
 
 /// A formula of more terms than this is given in plain notation only: typesetting it takes seconds.
 const MOST_TYPESET: usize = 1_000;
-
-/// A left side longer than this stands on lines of its own.
-const SHORT: usize = 48;
 
 const EQUAL: Relation = Relation { tex: "=", plain: "=" };
 const DIFFERS: Relation = Relation {
@@ -47,56 +44,27 @@ pub(super) fn statement(notation: &Notation, stated: &Statement, show: fn(Formul
 /// What is equal to what: in the symbols of the trade first, then as expressions where these say more.
 fn formulas(notation: &Notation, left: &Side, relation: &Relation, right: &Side) -> Vec<Formula> {
     let name = |side: &Side| side.formal.as_ref().map(formal::formula);
-    let same = left.value == right.value;
+    let (first, second) = (left.value, right.value);
+    let same = first == second;
+    let values = || notation.chain(Head::Expr(first), &[(relation, second)]);
     match (name(left), name(right)) {
-        (None, None) => values(notation, left.value, relation, right.value),
-        (Some(name), None) if same => vec![notation.equation(&name, relation, right.value)],
-        (Some(name), None) => {
-            let first = notation.equation(&name, &EQUAL, left.value);
-            vec![first, notation.equation(&blank(), relation, right.value)]
-        }
-        (None, Some(name)) if same => vec![notation.equation(&name, relation, left.value)],
-        (None, Some(name)) => {
-            let mut lines = values(notation, left.value, relation, right.value);
-            lines.push(notation.equation(&name, &EQUAL, right.value));
-            lines
-        }
-        (Some(first), Some(second)) => {
-            let names = joined(&first, relation, &second);
+        (None, None) => vec![values()],
+        (Some(name), None) if same => vec![notation.chain(Head::Name(&name), &[(relation, second)])],
+        (Some(name), None) => vec![notation.chain(Head::Name(&name), &[(&EQUAL, first), (relation, second)])],
+        (None, Some(name)) if same => vec![notation.chain(Head::Name(&name), &[(relation, first)])],
+        (None, Some(name)) => vec![values(), notation.chain(Head::Name(&name), &[(&EQUAL, second)])],
+        (Some(one), Some(other)) => {
+            let names = Formula::new(
+                format!("{} {} {}", one.tex, relation.tex, other.tex),
+                format!("{} {} {}", one.plain, relation.plain, other.plain),
+            );
             if same {
-                return vec![notation.equation(&names, relation, right.value)];
+                vec![notation.chain(Head::Name(&names), &[(&EQUAL, second)])]
+            } else {
+                vec![names, values()]
             }
-            let mut lines = vec![names];
-            lines.extend(values(notation, left.value, relation, right.value));
-            lines
         }
     }
-}
-
-/// Two expressions and their relation; a long left side stands on lines of its own.
-fn values(notation: &Notation, left: Expr, relation: &Relation, right: Expr) -> Vec<Formula> {
-    let whole = notation.formula(left);
-    if whole.plain.chars().count() <= SHORT {
-        return vec![notation.equation(&whole, relation, right)];
-    }
-    if right.is_zero() {
-        return vec![notation.vanishing(left, relation)];
-    }
-    vec![
-        notation.result(left),
-        notation.equation(&blank(), relation, right),
-    ]
-}
-
-fn blank() -> Formula {
-    Formula::new("", "")
-}
-
-fn joined(left: &Formula, relation: &Relation, right: &Formula) -> Formula {
-    Formula::new(
-        format!("{} {} {}", left.tex, relation.tex, right.tex),
-        format!("{} {} {}", left.plain, relation.plain, right.plain),
-    )
 }
 
 /// A statement by its name and size, with its plain notation folded.
