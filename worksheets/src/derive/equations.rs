@@ -150,9 +150,20 @@ fn equation(
         Side::named(name, by_energy),
         Side::of(collected),
         Rule::CollectedForm,
-        [Ground::step(format!("equations.{coordinate}.routes"))],
+        [Ground::step(format!("equations.{coordinate}.routes"))]
+            .into_iter()
+            .chain(stated(stage.model)),
     );
     Ok(collected)
+}
+
+/// Everything that an equation of motion rests on: particles, applied forces, and the reactions whose
+/// virtual work was taken for what it is.
+fn stated(model: &Model) -> impl Iterator<Item = Ground> {
+    let particles = model.particles().iter().map(|particle| particle.name());
+    let forces = model.forces().iter().map(|force| force.name());
+    let reactions = model.reactions().iter().map(|reaction| reaction.name());
+    particles.chain(forces).chain(reactions).map(Ground::stated)
 }
 
 /// The equation as it is read: prescribed inputs that stand without coordinates on the right.

@@ -5,7 +5,7 @@ use cas::present::collected;
 use cas::text::plain;
 use cas::{Effort, Expr, Symbol};
 
-use crate::model::Model;
+use crate::model::{Force, Model, Reaction};
 use crate::record::{Derivation, Ground, Rule, Shown, Side, Statement, Step};
 
 /// A stage at work: the derivation that grows, and the work that one comparison may take.
@@ -58,24 +58,36 @@ impl<'a> Stage<'a> {
         self.pushed(Step::stated(key, statement, rule).resting_on(grounds))
     }
 
-    /// Adds a step with the assumptions on which its grounds depend.
+    /// Adds a step with the assumptions on which its grounds depend, and with the conditions under
+    /// which the forces and reactions among them are as stated.
     pub(super) fn pushed(&mut self, step: Step) -> &Step {
-        let names: Vec<&String> = step
+        let names: Vec<String> = step
             .rests_on
             .iter()
             .filter_map(|ground| match ground {
-                Ground::Stated(name) => Some(name),
+                Ground::Stated(name) => Some(name.clone()),
                 Ground::Step(_) | Ground::Assumption(_) => None,
             })
             .collect();
-        let assumptions: Vec<Ground> = self
-            .model
-            .register_of_assumptions()
+        let named = |name: cas::Name| names.iter().any(|known| known == name.as_str());
+        let register = self.model.register_of_assumptions();
+        let assumptions = register
             .iter()
             .filter(|assumption| names.iter().any(|name| assumption.affects().contains(name)))
-            .map(|assumption| Ground::Assumption(assumption.number()))
-            .collect();
-        self.derivation.steps.push(step.resting_on(assumptions));
+            .map(|assumption| Ground::Assumption(assumption.number()));
+        let forces = self.model.forces().iter().filter(|force| named(force.name()));
+        let reactions = self
+            .model
+            .reactions()
+            .iter()
+            .filter(|reaction| named(reaction.name()));
+        let conditions = forces
+            .flat_map(Force::conditions)
+            .chain(reactions.flat_map(Reaction::conditions))
+            .copied();
+        self.derivation
+            .steps
+            .push(step.resting_on(assumptions).under(conditions));
         self.derivation
             .steps
             .last()

@@ -147,6 +147,8 @@ fn a_rheonomic_carriage_on_a_turntable() {
     let motion = sheet.equations();
     let expected = m * rate(s, 2) + d * rate(s, 1) + (k - m * omega.squared()) * s - k * l_0;
     equal(motion.equations()[0], expected);
+    let conditions = &motion.derivation().steps.last().expect("steps").conditions;
+    assert_eq!(conditions[..], [cas::Condition::Positive(s)]);
     let potential = sheet.potential();
     assert!(
         potential
