@@ -22,6 +22,7 @@ mod tidy;
 mod verdict;
 
 pub use condition::Condition;
+pub use tidy::tidied;
 pub use verdict::{Evidence, Method, Proof, Reason, Value, Verdict, Witness};
 
 use crate::basis::{Basis, Failure};
@@ -32,7 +33,6 @@ use crate::fingerprint::{self, Fingerprint};
 use crate::fraction;
 use crate::number::Rational;
 use crate::sample::{ByIntervals, by_intervals, exact_witness};
-use tidy::tidied;
 
 /// Whether two expressions are equal.
 ///

@@ -3,7 +3,16 @@
 use super::condition::Condition;
 
 /// The conditions without repetitions; `x >= 0` and `x != 0` together become `x > 0`.
-pub(super) fn tidied(conditions: Vec<Condition>) -> Vec<Condition> {
+///
+/// ```
+/// use cas::{Condition, Expr, decide::tidied};
+/// let x = Expr::symbol("x")?;
+/// let both = vec![Condition::NotNegative(x), Condition::NotZero(x)];
+/// assert_eq!(tidied(both), [Condition::Positive(x)]);
+/// # Ok::<(), cas::NameError>(())
+/// ```
+#[must_use]
+pub fn tidied(conditions: Vec<Condition>) -> Vec<Condition> {
     let mut tidy: Vec<Condition> = Vec::new();
     for condition in conditions {
         let expr = condition.expr();

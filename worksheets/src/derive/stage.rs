@@ -1,6 +1,6 @@
 //! What every stage does with its steps.
 
-use cas::decide::compare;
+use cas::decide::{compare, tidied};
 use cas::present::collected;
 use cas::text::plain;
 use cas::{Effort, Expr, Symbol};
@@ -85,9 +85,9 @@ impl<'a> Stage<'a> {
             .flat_map(Force::conditions)
             .chain(reactions.flat_map(Reaction::conditions))
             .copied();
-        self.derivation
-            .steps
-            .push(step.resting_on(assumptions).under(conditions));
+        let mut step = step.resting_on(assumptions).under(conditions);
+        step.conditions = tidied(step.conditions);
+        self.derivation.steps.push(step);
         self.derivation
             .steps
             .last()

@@ -43,7 +43,7 @@ fn the_unfolded_lines_carry_the_argument() {
         "[ m*l^2 ]",
         "One equation.",
         "No damping is stated.",
-        "Assumes (1) ",
+        "Rests on assumption 1 of the register",
         "4 steps",
         "Checked by hand.",
     ] {

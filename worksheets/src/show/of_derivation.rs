@@ -4,13 +4,15 @@
 
 use std::collections::BTreeSet;
 
+use cas::decide::tidied;
+
 use super::formula::Notation;
 use super::of_report;
 use super::of_step::{self, Grounds};
 use super::page::{Block, Line, Mark, Page, Piece, words};
 use super::statement::{matrix, statement};
 use crate::model::{Condition, Model};
-use crate::record::{Derivation, Ground, Record, Shown, Standing, Tally, is_implied};
+use crate::record::{AssumptionEntry, Derivation, Ground, Record, Shown, Standing, Tally, is_implied};
 
 /// The page of a derivation from a model.
 #[must_use]
@@ -50,17 +52,27 @@ fn derived(record: &Record, derivation: &Derivation) -> Page {
     if !conditions.is_empty() {
         blocks.push(Block::Sentence(notation.where_holds(&conditions)));
     }
-    blocks.extend(assumptions(record, derivation).map(Block::Sentence));
+    let used = assumptions(record, derivation);
+    blocks.extend(numbered(&used).map(Block::Sentence));
     if !derivation.steps.is_empty() {
         let grounds = Grounds::of(record);
-        let items = derivation.steps.iter();
+        let items = derivation
+            .steps
+            .iter()
+            .map(|step| of_step::item(&notation, &grounds, step));
+        let mut folded = vec![Block::Steps(items.collect())];
+        if !used.is_empty() {
+            let texts = used
+                .iter()
+                .map(|entry| format!("({}) {}", entry.number, entry.text));
+            folded.push(Block::Sentence(vec![
+                Piece::quiet("Assumptions: "),
+                Piece::words(texts.collect::<Vec<_>>().join(" ")),
+            ]));
+        }
         blocks.push(Block::Folded {
             summary: words(counted(derivation.steps.len(), "step")),
-            blocks: vec![Block::Steps(
-                items
-                    .map(|step| of_step::item(&notation, &grounds, step))
-                    .collect(),
-            )],
+            blocks: folded,
         });
     }
     blocks.extend(
@@ -130,17 +142,18 @@ fn refutations(derivation: &Derivation) -> impl Iterator<Item = Block> {
 /// Where the steps hold, without what the declared signs of constants imply.
 fn conditions(record: &Record, derivation: &Derivation) -> Vec<Condition> {
     let given = record.given();
-    let mut open: Vec<Condition> = Vec::new();
-    for condition in derivation.steps.iter().flat_map(|step| &step.conditions) {
-        if !open.contains(condition) && !is_implied(*condition, &given) {
-            open.push(*condition);
-        }
-    }
-    open
+    let all = derivation
+        .steps
+        .iter()
+        .flat_map(|step| step.conditions.iter().copied());
+    let all = tidied(all.collect());
+    all.into_iter()
+        .filter(|condition| !is_implied(*condition, &given))
+        .collect()
 }
 
 /// The assumptions that the steps rest on.
-fn assumptions(record: &Record, derivation: &Derivation) -> Option<Line> {
+fn assumptions<'a>(record: &'a Record, derivation: &Derivation) -> Vec<&'a AssumptionEntry> {
     let grounds = derivation.steps.iter().flat_map(|step| &step.rests_on);
     let numbers: BTreeSet<usize> = grounds
         .filter_map(|ground| match ground {
@@ -148,18 +161,23 @@ fn assumptions(record: &Record, derivation: &Derivation) -> Option<Line> {
             Ground::Step(_) | Ground::Stated(_) => None,
         })
         .collect();
-    let used = record
-        .assumptions
-        .iter()
-        .filter(|entry| numbers.contains(&entry.number));
-    let texts: Vec<String> = used
-        .map(|entry| format!("({}) {}", entry.number, entry.text.trim_end_matches('.')))
-        .collect();
-    (!texts.is_empty()).then(|| {
-        vec![
-            Piece::quiet("Assumes "),
-            Piece::words(format!("{}.", texts.join("; "))),
-        ]
+    let entries = record.assumptions.iter();
+    entries.filter(|entry| numbers.contains(&entry.number)).collect()
+}
+
+/// Their numbers in the register; the texts stand there and under the fold, not under every result.
+fn numbered(used: &[&AssumptionEntry]) -> Option<Line> {
+    let numbers: Vec<String> = used.iter().map(|entry| entry.number.to_string()).collect();
+    let word = if numbers.len() == 1 {
+        "assumption"
+    } else {
+        "assumptions"
+    };
+    (!numbers.is_empty()).then(|| {
+        vec![Piece::quiet(format!(
+            "Rests on {word} {} of the register.",
+            numbers.join(", ")
+        ))]
     })
 }
 
