@@ -1,5 +1,11 @@
 //! Derived equations, accelerations and reactions against published ones.
 
+mod accelerations;
+mod equations;
+mod planted;
+mod reference;
+mod steps;
+
 use tests::published::all;
 
 #[test]

@@ -2,15 +2,13 @@
 
 use cas::calculus::derivative;
 use cas::decide::{compare, is_zero};
-use cas::{Effort, Expr, Kind, Substitution, Symbol, Verdict, postorder};
+use cas::present::collected;
+use cas::{Effort, Expr, Function, Kind, Rational, Symbol, Verdict, postorder};
 
 use super::DeriveError;
 use super::forces::generalized;
 use super::kinematics::Kinematics;
 use crate::model::{Force, ForceKind, Model, Role};
-
-/// Potentials of forces that are polynomials in the coordinates are looked for up to this degree.
-const HIGHEST_DEGREE: i64 = 8;
 
 /// What was found about the potential of one force.
 pub(super) enum Finding {
@@ -103,7 +101,7 @@ fn finding(
     let candidates = candidate
         .into_iter()
         .chain(constant(model, force))
-        .chain(along_rays(kinematics, generalized)?);
+        .chain(integrated(kinematics, generalized, effort)?);
     for potential in candidates {
         if is_potential(kinematics, potential, generalized, effort)? {
             return Ok(Finding::Potential(potential));
@@ -154,32 +152,60 @@ fn constant(model: &Model, force: &Force) -> Option<Expr> {
     Some(-work.collect::<Option<Vec<_>>>()?.into_iter().sum::<Expr>())
 }
 
-/// The work along rays from the origin of the coordinates, for generalized forces that are polynomials
-/// in them: `V = -sum over n of (part of q . Q of degree n) / n`.
-fn along_rays(kinematics: &Kinematics, generalized: &[Expr]) -> Result<Option<Expr>, DeriveError> {
-    let Ok(scale) = Symbol::new("ray") else {
-        return Ok(None);
-    };
-    let ray = Expr::from(scale);
-    let coordinates = || kinematics.coordinates.iter().map(|q| Expr::from(*q));
-    let scaled = Substitution::new(coordinates().map(|q| (q, ray * q)));
-    let along: Expr = coordinates()
-        .zip(generalized)
-        .map(|(q, part)| q * part.substituted(&scaled))
-        .sum();
-    let origin = Substitution::new([(ray, Expr::zero())]);
-    let (mut taken, mut factorial, mut work) = (along, Expr::one(), Vec::new());
-    for degree in 0..=HIGHEST_DEGREE {
-        // The coefficient of the power `degree` of the ray's parameter, integrated from 0 to 1.
-        let coefficient = taken.substituted(&origin);
-        if coefficient.is_undefined() {
-            return Ok(None);
+/// The potential found by integrating one generalized force after the other by its own coordinate,
+/// each less what the earlier ones account for.
+///
+/// Only antiderivatives of powers, sines and cosines are known here; whether the result is a potential
+/// is for the caller to prove.
+fn integrated(
+    kinematics: &Kinematics,
+    generalized: &[Expr],
+    effort: &Effort,
+) -> Result<Option<Expr>, DeriveError> {
+    let mut potential = Expr::zero();
+    for (coordinate, part) in kinematics.coordinates.iter().zip(generalized) {
+        let rest = collected(
+            *part + derivative(potential, *coordinate)?,
+            &kinematics.coordinates,
+            effort,
+        );
+        for term in rest.terms() {
+            let Some(integral) = antiderivative(term, *coordinate) else {
+                return Ok(None);
+            };
+            potential -= integral;
         }
-        work.push(coefficient / (factorial * (degree + 1)));
-        taken = derivative(taken, scale)?;
-        factorial *= Expr::from(degree + 1);
     }
-    Ok(Some(-Expr::sum_of(work)))
+    Ok(Some(potential))
+}
+
+/// The antiderivative of a product of which at most one factor depends on the symbol.
+fn antiderivative(term: Expr, by: Symbol) -> Option<Expr> {
+    let depends = |factor: &Expr| factor.symbols().contains(&by);
+    let (varying, fixed): (Vec<Expr>, Vec<Expr>) = term.factors().into_iter().partition(depends);
+    let variable = Expr::from(by);
+    let integral = match varying[..] {
+        [] => variable,
+        [only] => match only.kind() {
+            Kind::Symbol(_) => variable.squared() / 2,
+            Kind::Power(base, exponent) if *base == variable && *exponent != Rational::from(-1) => {
+                let raised = exponent + &Rational::ONE;
+                variable.power(raised.clone()) / Expr::number(raised)
+            }
+            Kind::Elementary(function, argument) => {
+                // Of a linear argument, whose slope the result is divided by.
+                let slope = derivative(*argument, by).ok().filter(|slope| !depends(slope))?;
+                match function {
+                    Function::Sine => -cas::cos(*argument) / slope,
+                    Function::Cosine => cas::sin(*argument) / slope,
+                    _ => return None,
+                }
+            }
+            _ => return None,
+        },
+        _ => return None,
+    };
+    Some(Expr::product_of(fixed.into_iter().chain([integral])))
 }
 
 fn is_potential(

@@ -204,6 +204,20 @@ fn polynomial_forces_have_a_potential_and_a_whirl_has_none() {
 }
 
 #[test]
+fn attraction_by_a_centre_has_a_potential() {
+    let mut sheet = Sheet::titled("Probe near a centre");
+    let m = sheet.positive_constant("m", "kg", "mass");
+    let mu = sheet.positive_constant("mu", "m3/s2", "strength");
+    let r = sheet.coordinate("r", "m", "distance");
+    let phi = sheet.coordinate("phi", "rad", "angle");
+    let probe = sheet.particle("probe", m, vector(r * cos(phi), r * sin(phi), 0));
+    let pull = -m * mu / r.squared();
+    sheet.force("centre", probe, vector(pull * cos(phi), pull * sin(phi), 0));
+    all_settled(&sheet);
+    equal(sheet.potential().expression().expect("a potential"), -m * mu / r);
+}
+
+#[test]
 fn a_reaction_that_does_work_stays_in_the_equations() {
     let mut sheet = Sheet::titled("Sledge with a skew push");
     let m = sheet.positive_constant("m", "kg", "mass");
