@@ -15,7 +15,9 @@ use std::path::{Path, PathBuf};
 use toml::{Table, Value};
 
 /// Packages that only run inside the compiler: optimising them costs more than it saves.
-const COMPILE_TIME_ONLY: [&str; 6] = [
+const COMPILE_TIME_ONLY: [&str; 8] = [
+    "darling_core",
+    "derive_builder_core",
     "proc-macro2",
     "quote",
     "serde_derive",
@@ -116,6 +118,12 @@ impl SessionFolder {
             table([("worksheets", table([("path", worksheets)]))]),
         );
         write_toml(&self.path.join("evcxr.toml"), &evcxr)?;
+
+        // Without a workspace of its own the crate of cells would be taken for part of one that lies above
+        // the data folder.
+        let apart = Value::Array(vec![Value::String("crate".to_owned())]);
+        let workspace = Table::from_iter([("workspace".to_owned(), table([("exclude", apart)]))]);
+        write_toml(&self.path.join("Cargo.toml"), &workspace)?;
 
         let crates_io = table([("replace-with", Value::String("vendored".to_owned()))]);
         let vendored = table([("directory", text(&library.vendored()))]);
