@@ -119,12 +119,6 @@ impl SessionFolder {
         );
         write_toml(&self.path.join("evcxr.toml"), &evcxr)?;
 
-        // Without a workspace of its own the crate of cells would be taken for part of one that lies above
-        // the data folder.
-        let apart = Value::Array(vec![Value::String("crate".to_owned())]);
-        let workspace = Table::from_iter([("workspace".to_owned(), table([("exclude", apart)]))]);
-        write_toml(&self.path.join("Cargo.toml"), &workspace)?;
-
         let crates_io = table([("replace-with", Value::String("vendored".to_owned()))]);
         let vendored = table([("directory", text(&library.vendored()))]);
         let level = |level| table([("opt-level", Value::Integer(level))]);
