@@ -85,7 +85,9 @@ fn a_refuted_step_or_a_reference_that_disagrees_fails_the_run() -> Result<()> {
          sheet.force(\"spring\", sledge, vector(-k * x, 0, 0));",
         "let mut wrong = sheet.equations().for_reference();\n\
          wrong.bias[0] = -wrong.bias[0];\n\
-         worksheets::reference::Check::new(worksheets::reference::Reference::new(sheet.model(), wrong))",
+         let reference = worksheets::reference::Reference::new(sheet.model(), wrong);\n\
+         let check = worksheets::reference::Check::new(reference);\n\
+         check",
     ]);
     written(&folder, "wrong.ipynb", &sheet)?;
     let found = run(&["run", "wrong.ipynb"], &folder)?;
