@@ -1,3 +1,5 @@
+//! What is decided, and how, on identities and non-identities chosen by hand.
+
 use super::*;
 use crate::expr::{Name, cos, exact, exp, ln, pi, sin, sqrt, tan};
 

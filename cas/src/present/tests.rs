@@ -1,3 +1,5 @@
+//! Expressions and the form in which an engineer reads them.
+
 use super::*;
 use crate::decide::compare;
 use crate::expr::{cos, pi, sin, sqrt, tan};

@@ -1,3 +1,5 @@
+//! The laws of the ring and its relations.
+
 use super::*;
 use crate::effort::Effort;
 

@@ -1,3 +1,5 @@
+//! Derivations of small machines, stage by stage.
+
 use cas::decide::compare;
 use cas::{Effort, Expr, Symbol, sqrt};
 
