@@ -111,10 +111,17 @@ impl Facts {
         self.steps_with(STATED)
     }
 
-    /// The distinct side conditions, in order of their text.
+    /// The distinct side conditions, in order of their text, without those that another implies.
     #[must_use]
-    pub fn conditions(&self) -> &BTreeSet<String> {
-        &self.conditions
+    pub fn conditions(&self) -> Vec<&str> {
+        let implied = |condition: &str| {
+            let weaker = [" != 0", " >= 0"].into_iter();
+            weaker
+                .filter_map(|end| condition.strip_suffix(end))
+                .any(|expression| self.conditions.contains(&format!("{expression} > 0")))
+        };
+        let texts = self.conditions.iter().map(String::as_str);
+        texts.filter(|condition| !implied(condition)).collect()
     }
 
     /// The comparison with the largest deviation.
@@ -166,7 +173,7 @@ mod tests {
         ));
         assert_eq!(facts.steps(), 3);
         assert_eq!(facts.steps_with("Proved"), 1);
-        assert_eq!(facts.conditions().len(), 1);
+        assert_eq!(facts.conditions(), ["m is not 0"]);
         assert!(facts.hold());
         facts.add_output(&output(json!({"steps": [step("d", "Refuted")]})));
         assert!(!facts.hold());
@@ -203,6 +210,15 @@ mod tests {
         facts.add_output(&reference("1e-11", false));
         assert_eq!(facts.worst_reference().unwrap().largest_deviation, "1e-11");
         assert!(!facts.hold());
+    }
+
+    #[test]
+    fn a_condition_that_another_implies_is_left_out() {
+        let mut facts = Facts::default();
+        let conditions = ["s != 0", "s > 0", "r != 0", "s >= 0"];
+        facts.add_output(&output(json!({"steps": [
+            {"key": "a", "verdict": {"kind": "Proved"}, "conditions": conditions}]})));
+        assert_eq!(facts.conditions(), ["r != 0", "s > 0"]);
     }
 
     #[test]

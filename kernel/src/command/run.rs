@@ -134,7 +134,7 @@ impl Outcome {
         let conditions = facts.conditions();
         line("side conditions", conditions.len().to_string());
         for condition in conditions {
-            line("", condition.clone());
+            line("", condition.to_owned());
         }
         let reference = facts.worst_reference().map_or_else(
             || "none".to_owned(),
