@@ -9,7 +9,7 @@ use crate::number::Rational;
 /// All numbers from a lower to an upper bound.
 ///
 /// Every operation rounds outward, so that the true value stays inside. Sine, cosine, exponential and
-/// logarithm are taken from the platform, whose error is assumed below [`SLACK`] units in the last
+/// logarithm are taken from the platform, whose error is assumed below eight units in the last
 /// place; that is far above what is known of current platforms (common practice: below one unit).
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Interval {
