@@ -31,7 +31,6 @@ mod result;
 mod stage;
 #[cfg(test)]
 mod tests;
-mod vanishing;
 mod velocities;
 mod work;
 

@@ -5,7 +5,7 @@ use cas::present::collected;
 use cas::text::plain;
 use cas::{Effort, Expr, Symbol};
 
-use crate::model::{Assumption, Force, Model, Reaction};
+use crate::model::{Force, Model, Reaction};
 use crate::record::{Derivation, Ground, Rule, Shown, Side, Statement, Step};
 
 /// A stage at work: the derivation that grows, and the work that one comparison may take.
@@ -13,7 +13,6 @@ pub(super) struct Stage<'a> {
     pub(super) model: &'a Model,
     pub(super) effort: &'a Effort,
     pub(super) derivation: Derivation,
-    register: Vec<Assumption>,
 }
 
 impl<'a> Stage<'a> {
@@ -22,7 +21,6 @@ impl<'a> Stage<'a> {
             model,
             effort,
             derivation: Derivation::titled(stage, title),
-            register: model.register_of_assumptions(),
         }
     }
 
@@ -72,8 +70,8 @@ impl<'a> Stage<'a> {
             })
             .collect();
         let named = |name: cas::Name| names.iter().any(|known| known == name.as_str());
-        let assumptions = self
-            .register
+        let register = self.model.register_of_assumptions();
+        let assumptions = register
             .iter()
             .filter(|assumption| names.iter().any(|name| assumption.affects().contains(name)))
             .map(|assumption| Ground::Assumption(assumption.number()));
@@ -111,14 +109,9 @@ impl<'a> Stage<'a> {
         self.derivation.notes.push(text.into());
     }
 
-    /// The expression as an engineer would write it, where that is proved to be the same function.
+    /// The expression as an engineer would write it.
     pub(super) fn collected(&self, expr: Expr, by: &[Symbol]) -> Expr {
-        let written = collected(expr, by, self.effort);
-        if compare(expr, written, self.effort).is_proved() {
-            written
-        } else {
-            expr
-        }
+        collected(expr, by, self.effort)
     }
 
     /// The expression in plain notation, for sentences.
