@@ -92,6 +92,6 @@ fn a_refuted_step_or_a_reference_that_disagrees_fails_the_run() -> Result<()> {
     written(&folder, "wrong.ipynb", &sheet)?;
     let found = run(&["run", "wrong.ipynb"], &folder)?;
     ensure!(found.code == Some(1), "{}", found.said());
-    ensure!(found.stdout.contains("disagrees"), "{}", found.said());
+    ensure!(found.stdout.contains("does not agree"), "{}", found.said());
     Ok(())
 }
