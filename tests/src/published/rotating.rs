@@ -139,10 +139,16 @@ fn governor() -> Published {
         m_1,
         vector(-radius * cos(turned), -radius * sin(turned), -depth),
     );
-    sheet.particle("sleeve", m_2, vector(0, 0, -2 * depth));
+    let sleeve = sheet.particle("sleeve", m_2, vector(0, 0, -2 * depth));
     sheet.gravity(g, vector(0, 0, -1));
     sheet.normal("side_left", left, vector(-sin(turned), cos(turned), 0));
     sheet.normal("side_right", right, vector(-sin(turned), cos(turned), 0));
+    for (name, ball) in [("left", left), ("right", right)] {
+        sheet.link(&format!("upper_{name}"), ball, vector(0, 0, 0));
+        sheet.link(&format!("lower_{name}"), ball, sleeve);
+    }
+    sheet.normal("spindle_x", sleeve, vector(1, 0, 0));
+    sheet.normal("spindle_y", sleeve, vector(0, 1, 0));
     let (v, s) = (rate(theta), sin(theta));
     let lagrangian = m_1 * a.squared() * (v.squared() + omega.squared() * s.squared())
         + 2 * m_2 * a.squared() * v.squared() * s.squared()

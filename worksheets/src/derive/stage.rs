@@ -5,7 +5,7 @@ use cas::present::collected;
 use cas::text::plain;
 use cas::{Effort, Expr, Symbol};
 
-use crate::model::{Force, Model, Reaction};
+use crate::model::{Assumption, Force, Model, Reaction};
 use crate::record::{Derivation, Ground, Rule, Shown, Side, Statement, Step};
 
 /// A stage at work: the derivation that grows, and the work that one comparison may take.
@@ -13,6 +13,7 @@ pub(super) struct Stage<'a> {
     pub(super) model: &'a Model,
     pub(super) effort: &'a Effort,
     pub(super) derivation: Derivation,
+    register: Vec<Assumption>,
 }
 
 impl<'a> Stage<'a> {
@@ -21,6 +22,7 @@ impl<'a> Stage<'a> {
             model,
             effort,
             derivation: Derivation::titled(stage, title),
+            register: model.register_of_assumptions(),
         }
     }
 
@@ -70,8 +72,8 @@ impl<'a> Stage<'a> {
             })
             .collect();
         let named = |name: cas::Name| names.iter().any(|known| known == name.as_str());
-        let register = self.model.register_of_assumptions();
-        let assumptions = register
+        let assumptions = self
+            .register
             .iter()
             .filter(|assumption| names.iter().any(|name| assumption.affects().contains(name)))
             .map(|assumption| Ground::Assumption(assumption.number()));

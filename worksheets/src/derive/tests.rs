@@ -5,7 +5,7 @@ use cas::{Effort, Expr, Symbol, sqrt};
 
 use super::*;
 use crate::prelude::*;
-use crate::record::Standing;
+use crate::record::{Relation, Standing};
 use crate::reference::Agreement;
 
 fn effort() -> Effort {
@@ -290,4 +290,52 @@ fn undetermined_functions_can_be_derived_with() {
     equal(sheet.equations().equations()[0], m * rate(x, 2) - law);
     let symbol: Symbol = x.as_symbol().expect("a symbol");
     assert!(law.contains(Expr::from(symbol)));
+}
+
+#[test]
+fn newtons_equations_leave_room_for_reactions_without_a_name() {
+    let mut sheet = Sheet::titled("Bead on a bent wire");
+    let m = sheet.positive_constant("m", "kg", "mass of the bead");
+    let b = sheet.positive_constant("b", "1/m", "bend of the wire");
+    let g = sheet.positive_constant("g", "m/s2", "acceleration of free fall");
+    let x = sheet.coordinate("x", "m", "position");
+    sheet.particle("bead", m, vector(x, 0, b * x.squared()));
+    sheet.gravity(g, vector(0, 0, -1));
+    all_settled(&sheet);
+    let newton = sheet.newton();
+    let relations = newton.derivation().steps.iter();
+    let relations: Vec<Relation> = relations.map(|step| step.statement.relation).collect();
+    assert_eq!(relations, [Relation::Defined, Relation::Defined]);
+    let needed = newton.value("newton.bead.z").expect("a step");
+    let expected = 2 * m * b * (x * rate(x, 2) + rate(x, 1).squared()) + m * g;
+    equal(needed, expected);
+    let words = format!("{:?}", sheet.virtual_work().derivation().headline);
+    assert!(
+        words.contains("1 direction that no stated reaction covers"),
+        "{words}"
+    );
+
+    sheet.normal("wire", "bead", vector(-2 * b * x, 0, 1));
+    let newton = sheet.newton();
+    let relations = newton.derivation().steps.iter();
+    let relations: Vec<Relation> = relations.map(|step| step.statement.relation).collect();
+    assert_eq!(relations, [Relation::Law, Relation::Law]);
+    assert!(newton.derivation().notes.is_empty() || !newton.derivation().notes[0].contains("without a name"));
+}
+
+/// Gravity acts on a trolley whose girder nobody stated: its push is not taken for zero.
+#[test]
+fn a_held_component_carries_what_acts_on_it() {
+    let mut sheet = Sheet::titled("Trolley");
+    let m = sheet.positive_constant("m", "kg", "mass");
+    let g = sheet.positive_constant("g", "m/s2", "acceleration of free fall");
+    let x = sheet.coordinate("x", "m", "position");
+    sheet.particle("trolley", m, vector(x, 0, 0));
+    sheet.gravity(g, vector(0, 0, -1));
+    let newton = sheet.newton();
+    let step = newton.derivation().step("newton.trolley.z").expect("a step");
+    assert_eq!(step.statement.relation, Relation::Defined);
+    equal(step.statement.right.value, m * g);
+    let step = newton.derivation().step("newton.trolley.x").expect("a step");
+    assert_eq!(step.statement.relation, Relation::Law);
 }

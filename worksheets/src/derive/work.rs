@@ -63,7 +63,22 @@ pub fn virtual_work(model: &Model, effort: &Effort) -> Result<Derived, DeriveErr
     if model.reactions().is_empty() {
         stage.say("No reactions are stated on this sheet.");
     }
+    if let Some(text) = taken_for_ideal(model) {
+        stage.say(text);
+    }
     Ok(Derived::new(model, stage.derivation))
+}
+
+/// That reactions without a name drop out is assumed, where there are such besides held components.
+pub(super) fn taken_for_ideal(model: &Model) -> Option<String> {
+    let further = model.unnamed_reactions().further();
+    (further > 0).then(|| {
+        format!(
+            "Position maps exclude {further} {} that no stated reaction covers: that reactions there do no virtual \
+             work is an assumption of the register, not proved.",
+            if further == 1 { "direction" } else { "directions" },
+        )
+    })
 }
 
 /// The virtual work of a reaction for a unit virtual displacement of a coordinate.
