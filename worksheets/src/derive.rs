@@ -31,6 +31,7 @@ mod result;
 mod stage;
 #[cfg(test)]
 mod tests;
+mod vanishing;
 mod velocities;
 mod work;
 

@@ -5,6 +5,7 @@ use std::ops::Deref;
 use cas::{Effort, Expr, Kind};
 
 use super::energy::{Examined, examined, total_potential, without_potential};
+use super::jacobian::require_independent;
 use super::kinematics::Kinematics;
 use super::mass_matrix::{LinearForm, linear_form};
 use super::newton::projected_inertia;
@@ -28,6 +29,30 @@ impl Motion {
     #[must_use]
     pub fn equations(&self) -> &[Expr] {
         &self.equations
+    }
+
+    /// The left side of one equation `... = 0`, in collected form; counted from zero in order of the
+    /// coordinates.
+    ///
+    /// # Panics
+    /// Beyond the last equation, to stop the cell.
+    #[must_use]
+    pub fn equation(&self, place: usize) -> Expr {
+        let count = self.equations.len();
+        let found = self.equations.get(place).copied();
+        crate::stop::unless(found.ok_or(DeriveError::NoEquation { place, count }))
+    }
+
+    /// The rows of the mass matrix `M` of `M q'' + h = 0`.
+    #[must_use]
+    pub fn mass_matrix(&self) -> &[Vec<Expr>] {
+        &self.linear.mass_matrix
+    }
+
+    /// The bias `h` of `M q'' + h = 0`.
+    #[must_use]
+    pub fn bias(&self) -> &[Expr] {
+        &self.linear.bias
     }
 
     /// Mass matrix and bias: `M q'' + h = 0`.
@@ -58,6 +83,7 @@ impl Deref for Motion {
 /// A model that is not complete, dependent coordinates, a position that cannot be differentiated.
 pub fn equations(model: &Model, effort: &Effort) -> Result<Motion, DeriveError> {
     let kinematics = Kinematics::of(model)?;
+    require_independent(&kinematics, effort)?;
     let forces = examined(model, &kinematics, effort)?;
     let mut stage = Stage::titled(model, effort, "equations", "Equations of motion");
     let mut equations = Vec::new();

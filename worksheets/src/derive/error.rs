@@ -1,8 +1,8 @@
 //! Why something could not be derived.
 
-use cas::Limit;
 use cas::calculus::CalculusError;
 use cas::matrix::MatrixError;
+use cas::{Limit, Name};
 
 use crate::model::ModelError;
 
@@ -21,12 +21,28 @@ pub enum DeriveError {
     Matrix(#[from] MatrixError),
     /// The columns of the Jacobian are linearly dependent at every state.
     #[error(
-        "the coordinates are not independent: the Jacobian of the positions has a rank below {coordinates} at every \
-         state"
+        "the coordinates are not independent: `{coordinate}` adds no motion of the particles to that of the \
+         coordinates before it, and the Jacobian of the positions has a rank below {coordinates} at every state"
     )]
     DependentCoordinates {
+        /// The first coordinate that is not independent of those before it.
+        coordinate: Name,
         /// The number of coordinates.
         coordinates: usize,
+    },
+    /// A stage has no single expression as its result.
+    #[error("\"{title}\" has no expression as its result")]
+    NoExpression {
+        /// The title of the stage.
+        title: String,
+    },
+    /// There is no equation of this number.
+    #[error("there is no equation {place}: the sheet has {count}")]
+    NoEquation {
+        /// The number asked for.
+        place: usize,
+        /// How many there are.
+        count: usize,
     },
     /// The computation grew beyond what was allowed.
     #[error(transparent)]
@@ -41,10 +57,17 @@ impl DeriveError {
             Self::Model(error) => error.hint(),
             Self::Calculus(error) => error.hint().to_owned(),
             Self::Matrix(error) => error.hint().to_owned(),
-            Self::DependentCoordinates { .. } => {
-                "look for two coordinates that move the particles in the same way, and leave one of them out"
+            Self::DependentCoordinates { coordinate, .. } => format!(
+                "leave `{coordinate}` out, or declare it with sheet.input(...) if its motion is prescribed"
+            ),
+            Self::NoExpression { .. } => {
+                "ask for it on sheet.potential() or sheet.lagrangian(), where a potential was found"
                     .to_owned()
             }
+            Self::NoEquation { count, .. } => format!(
+                "equations are counted from zero in the order of the coordinates: 0 to {}",
+                count.saturating_sub(1)
+            ),
             Self::TooLarge(limit) => limit.hint().to_owned(),
         }
     }

@@ -1,14 +1,15 @@
 //! The Jacobian of the positions, its rank, and where the coordinates become singular.
 
 use cas::decide::is_zero;
-use cas::matrix::Matrix;
-use cas::{Condition, Effort, Expr, Kind};
+use cas::matrix::{Matrix, MatrixError};
+use cas::{Condition, Effort, Expr, Limit};
 
 use super::kinematics::Kinematics;
 use super::stage::Stage;
+use super::vanishing::factors_that_may_vanish;
 use super::{DeriveError, Derived};
 use crate::model::Model;
-use crate::record::{Formal, Ground, Rule, Shown, Side, Statement, Step, given, is_implied};
+use crate::record::{Formal, Ground, Rule, Shown, Side, Statement, Step, given};
 
 /// The matrix of `dr/dq` with one row for each position component, and the determinant of its
 /// transpose times itself.
@@ -54,57 +55,94 @@ pub fn jacobian(model: &Model, effort: &Effort) -> Result<Derived, DeriveError> 
         label: Formal::Jacobian,
         rows,
     });
-    let gram = Matrix::from_fn(columns, columns, |i, j| {
-        kinematics.projected(i, |component| component.row[j])
-    });
-    let (determinant, conditions) = gram.determinant(effort)?;
+    let (determinant, conditions) = gram_determinant(&kinematics, columns, effort)?;
     if is_zero(determinant, effort).is_proved() {
-        return Err(DeriveError::DependentCoordinates { coordinates: columns });
+        return Err(dependent(&kinematics, effort)?);
     }
     let shown = stage.collected(determinant, &[]);
-    let known = given(model);
-    let singular: Vec<Condition> = divisors(shown)
-        .into_iter()
-        .map(Condition::NotZero)
-        .filter(|condition| !is_implied(*condition, &known))
-        .collect();
+    let vanishing = factors_that_may_vanish(shown, &given(model), effort);
     let verdict = cas::decide::compare(determinant, shown, effort);
     let statement = Statement::equal(Side::named(Formal::GramDeterminant, determinant), Side::of(shown));
     stage.pushed(
         Step::judged("jacobian.rank", statement, Rule::Rank, &verdict)
             .under(conditions)
-            .under(singular.iter().copied()),
+            .under(vanishing.iter().copied().map(Condition::NotZero)),
     );
     stage.show(Statement::defined(Formal::GramDeterminant, shown));
-    stage.say(if singular.is_empty() {
-        format!("The rank is {columns} at every state: the coordinates are regular everywhere.")
-    } else {
-        let vanishing = singular
-            .iter()
-            .map(|condition| format!("{} = 0", stage.plain(condition.expr())));
-        format!(
-            "The rank is {columns} except where {}: there the coordinates are singular.",
-            vanishing.collect::<Vec<_>>().join(" or ")
-        )
+    stage.say(match unless(&stage, &vanishing) {
+        None => format!("The rank is {columns} at every state: the coordinates are regular everywhere."),
+        Some(Exception::At(places)) => {
+            format!("The rank is {columns} except where {places}: there the coordinates are singular.")
+        }
+        Some(Exception::Unless(factors)) => format!("The rank is {columns} wherever {factors}."),
     });
     Ok(Derived::new(model, stage.derivation))
 }
 
-/// The factors of an expression without their exponents and without numbers.
-pub(super) fn divisors(expr: Expr) -> Vec<Expr> {
-    let factors = expr
-        .factors()
-        .into_iter()
-        .filter(|factor| factor.as_number().is_none());
-    let bases = factors.map(|factor| match factor.kind() {
-        Kind::Power(base, exponent) if exponent.is_positive() => *base,
-        _ => factor,
-    });
-    let mut found: Vec<Expr> = Vec::new();
-    for base in bases {
-        if !found.contains(&base) {
-            found.push(base);
-        }
+/// Where something does not hold.
+pub(super) enum Exception {
+    /// At these places, which are told by a symbol or function that is zero there.
+    At(String),
+    /// Nothing more is known than that it holds where these factors are not zero; they need not have
+    /// a zero at all.
+    Unless(String),
+}
+
+/// What to say of factors that may vanish; `None` where there are none.
+pub(super) fn unless(stage: &Stage<'_>, vanishing: &[Expr]) -> Option<Exception> {
+    let row = |sign: &str, between: &str| {
+        let texts = vanishing
+            .iter()
+            .map(|factor| format!("{} {sign} 0", stage.plain(*factor)));
+        texts.collect::<Vec<_>>().join(between)
+    };
+    if vanishing.is_empty() {
+        None
+    } else if vanishing.iter().any(|factor| factor.terms().len() > 1) {
+        Some(Exception::Unless(row("!=", " and ")))
+    } else {
+        Some(Exception::At(row("=", " or ")))
     }
-    found
+}
+
+/// The determinant of `J^T J` for the first coordinates, this many of them, with where it is valid.
+pub(super) fn gram_determinant(
+    kinematics: &Kinematics,
+    coordinates: usize,
+    effort: &Effort,
+) -> Result<(Expr, Vec<Condition>), MatrixError> {
+    let gram = Matrix::from_fn(coordinates, coordinates, |i, j| {
+        kinematics.projected(i, |component| component.row[j])
+    });
+    gram.determinant(effort)
+}
+
+/// Refuses coordinates that are dependent at every state.
+///
+/// Where the determinant is beyond the work allowed nothing is refused: what was derived holds all the
+/// same, and the Jacobian's own page says that the rank is not known.
+pub(super) fn require_independent(kinematics: &Kinematics, effort: &Effort) -> Result<(), DeriveError> {
+    match gram_determinant(kinematics, kinematics.coordinates.len(), effort) {
+        Ok((value, _)) if is_zero(value, effort).is_proved() => Err(dependent(kinematics, effort)?),
+        Ok(_) => Ok(()),
+        Err(MatrixError::TooLarge(limit)) if limit != Limit::Stopped => Ok(()),
+        Err(error) => Err(error.into()),
+    }
+}
+
+/// The error that names the first coordinate which moves nothing in a way of its own.
+fn dependent(kinematics: &Kinematics, effort: &Effort) -> Result<DeriveError, MatrixError> {
+    let (mut first, coordinates) = (0, kinematics.coordinates.len());
+    // All of them are known to be dependent, so the last is asked no more.
+    while first + 1 < coordinates {
+        let (value, _) = gram_determinant(kinematics, first + 1, effort)?;
+        if is_zero(value, effort).is_proved() {
+            break;
+        }
+        first += 1;
+    }
+    Ok(DeriveError::DependentCoordinates {
+        coordinate: kinematics.coordinates[first].name(),
+        coordinates,
+    })
 }

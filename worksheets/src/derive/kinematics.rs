@@ -87,8 +87,12 @@ impl Kinematics {
 
     /// The sum over all components of a product with the column of one coordinate.
     pub(super) fn projected(&self, coordinate: usize, factor: impl Fn(&Component) -> Expr) -> Expr {
-        let components = self.components.iter();
-        Expr::sum_of(components.map(|component| factor(component) * component.row[coordinate]))
+        // Zero times an inverse would stay as it is; where the position has a value is said elsewhere.
+        let products = self.components.iter().filter_map(|component| {
+            let (factor, slope) = (factor(component), component.row[coordinate]);
+            (!factor.is_zero() && !slope.is_zero()).then(|| factor * slope)
+        });
+        Expr::sum_of(products)
     }
 
     /// `d/dt(dF/dq') - dF/dq` of a function of coordinates, velocities and time.

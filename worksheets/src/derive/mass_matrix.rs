@@ -6,9 +6,10 @@ use cas::present::collected;
 use cas::{Effort, Expr, Substitution};
 
 use super::equations::Motion;
-use super::jacobian::divisors;
+use super::jacobian::{Exception, gram_determinant, unless};
 use super::kinematics::Kinematics;
 use super::stage::Stage;
+use super::vanishing::factors_that_may_vanish;
 use super::{DeriveError, Derived};
 use crate::model::{Condition, Model};
 use crate::record::{Formal, Ground, Rule, Shown, Side, Statement, given, is_implied};
@@ -109,33 +110,41 @@ pub fn mass_matrix(model: &Model, motion: &Motion, effort: &Effort) -> Result<De
         Side::named(equation, Expr::zero()),
         Side::of(Expr::zero()),
     ));
-    invertible(&mut stage, mass_matrix)?;
+    invertible(&mut stage, &kinematics, mass_matrix)?;
     Ok(Derived::new(model, stage.derivation))
 }
 
 /// Says where the accelerations are determined.
-fn invertible(stage: &mut Stage<'_>, rows: &[Vec<Expr>]) -> Result<(), DeriveError> {
+///
+/// The mass matrix is `J^T m J` with the masses on a diagonal. Where all of them are above zero it is
+/// positive definite exactly where the Jacobian has full rank, so that the places are told without masses.
+fn invertible(stage: &mut Stage<'_>, kinematics: &Kinematics, rows: &[Vec<Expr>]) -> Result<(), DeriveError> {
     let matrix = Matrix::from_rows(rows.to_vec())?;
     let (determinant, _) = matrix.determinant(stage.effort)?;
     let shown = stage.collected(determinant, &[]);
-    let known = given(stage.model);
-    let open: Vec<String> = divisors(shown)
-        .into_iter()
-        .filter(|factor| !is_implied(Condition::NotZero(*factor), &known))
-        .map(|factor| stage.plain(factor))
-        .collect();
-    let text = format!("det M = {}", stage.plain(shown));
     if shown.is_zero() {
         stage.note("det M = 0: the accelerations are not determined by these equations.");
-    } else if open.is_empty() {
-        stage.note(format!(
-            "{text}, which is not zero at any state: the accelerations are determined everywhere."
-        ));
-    } else {
-        stage.note(format!(
-            "{text}: the accelerations are determined where this is not zero, that is except where {} = 0.",
-            open.join(" = 0 or ")
-        ));
+        return Ok(());
     }
+    let known = given(stage.model);
+    let mut vanishing = factors_that_may_vanish(shown, &known, stage.effort);
+    let mut masses = stage.model.particles().iter().map(|particle| particle.mass());
+    if !vanishing.is_empty() && masses.all(|mass| is_implied(Condition::Positive(mass), &known)) {
+        let (gram, _) = gram_determinant(kinematics, kinematics.coordinates.len(), stage.effort)?;
+        vanishing = factors_that_may_vanish(stage.collected(gram, &[]), &known, stage.effort);
+    }
+    let text = format!("det M = {}", stage.plain(shown));
+    let note = match unless(stage, &vanishing) {
+        None => {
+            format!("{text}, which is not zero at any state: the accelerations are determined everywhere.")
+        }
+        Some(Exception::At(places)) => {
+            format!("{text}: the accelerations are determined except where {places}.")
+        }
+        Some(Exception::Unless(factors)) => {
+            format!("{text}: the accelerations are determined wherever {factors}.")
+        }
+    };
+    stage.note(note);
     Ok(())
 }

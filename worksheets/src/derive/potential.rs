@@ -38,7 +38,11 @@ pub fn potential(model: &Model, effort: &Effort) -> Result<Derived, DeriveError>
     let total = total_potential(&forces);
     let shown = stage.collected(total, &[]);
     if found == 0 {
-        stage.say("No applied force has a potential.");
+        stage.say(if forces.is_empty() {
+            "No applied forces are stated on this sheet."
+        } else {
+            "No applied force has a potential."
+        });
         return Ok(Derived::new(model, stage.derivation));
     }
     stage.equal(

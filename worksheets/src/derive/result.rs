@@ -2,6 +2,7 @@
 
 use cas::Expr;
 
+use super::DeriveError;
 use crate::model::Model;
 use crate::record::Derivation;
 
@@ -41,10 +42,15 @@ impl Derived {
         &self.derivation
     }
 
-    /// The expression that the stage found, where that is one: the potential, the Lagrangian.
+    /// The expression that the stage found: the potential, the Lagrangian.
+    ///
+    /// # Panics
+    /// Where the stage found none, to stop the cell.
     #[must_use]
-    pub fn expression(&self) -> Option<Expr> {
-        self.expression
+    pub fn expression(&self) -> Expr {
+        crate::stop::unless(self.expression.ok_or_else(|| DeriveError::NoExpression {
+            title: self.derivation.title.clone(),
+        }))
     }
 
     /// The right side of the step of this key, such as `velocities.trolley.x`.

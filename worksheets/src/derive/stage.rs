@@ -111,9 +111,14 @@ impl<'a> Stage<'a> {
         self.derivation.notes.push(text.into());
     }
 
-    /// The expression as an engineer would write it.
+    /// The expression as an engineer would write it, where that is proved to be the same function.
     pub(super) fn collected(&self, expr: Expr, by: &[Symbol]) -> Expr {
-        collected(expr, by, self.effort)
+        let written = collected(expr, by, self.effort);
+        if compare(expr, written, self.effort).is_proved() {
+            written
+        } else {
+            expr
+        }
     }
 
     /// The expression in plain notation, for sentences.

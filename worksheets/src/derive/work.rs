@@ -18,9 +18,9 @@ use crate::record::{Formal, Ground, Rule, Side, Statement};
 pub fn virtual_work(model: &Model, effort: &Effort) -> Result<Derived, DeriveError> {
     let kinematics = Kinematics::of(model)?;
     let mut stage = Stage::titled(model, effort, "virtual_work", "Virtual work of the reactions");
-    let (mut ideal, mut working) = (Vec::new(), Vec::new());
+    let (mut ideal, mut working, mut open) = (Vec::new(), Vec::new(), Vec::new());
     for reaction in model.reactions() {
-        let mut works = false;
+        let (mut works, mut is_open) = (false, false);
         for (place, coordinate) in kinematics.coordinates.iter().enumerate() {
             let work = work_of(&kinematics, reaction, place);
             let name = Formal::VirtualWork {
@@ -37,10 +37,14 @@ pub fn virtual_work(model: &Model, effort: &Effort) -> Result<Derived, DeriveErr
             } else {
                 let grounds = [Ground::stated(reaction.name())];
                 let step = stage.equal(&key, left, Side::of(Expr::zero()), Rule::VirtualWork, grounds);
-                works |= !step.standing.is_settled();
+                is_open |= !step.standing.is_settled();
             }
         }
-        if works { &mut working } else { &mut ideal }.push(reaction.name());
+        match (works, is_open) {
+            (true, _) => working.push(reaction.name()),
+            (false, true) => open.push(reaction.name()),
+            (false, false) => ideal.push(reaction.name()),
+        }
     }
     if !ideal.is_empty() {
         stage.say(format!(
@@ -49,15 +53,19 @@ pub fn virtual_work(model: &Model, effort: &Effort) -> Result<Derived, DeriveErr
             if ideal.len() == 1 { "It drops" } else { "They drop" },
         ));
     }
+    let stays = |names: &[cas::Name]| if names.len() == 1 { "It stays" } else { "They stay" };
     if !working.is_empty() {
         stage.say(format!(
-            "Virtual work not shown to be zero: {}. {} in the equations of motion.",
+            "Virtual work not zero, shown by values at which it differs: {}. {} in the equations of motion.",
             listed(&working),
-            if working.len() == 1 {
-                "It stays"
-            } else {
-                "They stay"
-            },
+            stays(&working),
+        ));
+    }
+    if !open.is_empty() {
+        stage.say(format!(
+            "Virtual work neither proved zero nor shown to differ from it: {}. {} in the equations of motion.",
+            listed(&open),
+            stays(&open),
         ));
     }
     if model.reactions().is_empty() {
