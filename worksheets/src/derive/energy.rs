@@ -9,6 +9,7 @@ use super::DeriveError;
 use super::forces::generalized;
 use super::kinematics::Kinematics;
 use crate::model::{Force, ForceKind, Model, Role};
+use crate::record::Ground;
 
 /// What was found about the potential of one force.
 pub(super) enum Finding {
@@ -228,6 +229,16 @@ pub(super) fn total_potential(examined: &[Examined<'_>]) -> Expr {
         Finding::Potential(potential) => Some(*potential),
         Finding::Idle | Finding::Without(_) => None,
     }))
+}
+
+/// What the total potential rests on: the forces that have one.
+pub(super) fn grounds_of_potential(examined: &[Examined<'_>]) -> Vec<Ground> {
+    let found = examined
+        .iter()
+        .filter(|examined| matches!(examined.finding, Finding::Potential(_)));
+    found
+        .map(|examined| Ground::stated(examined.force.name()))
+        .collect()
 }
 
 /// The generalized force of those forces that have no potential.

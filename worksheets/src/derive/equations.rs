@@ -185,7 +185,7 @@ fn equation(
 
 /// Everything that an equation of motion rests on: particles, applied forces, and the reactions whose
 /// virtual work was taken for what it is.
-fn stated(model: &Model) -> impl Iterator<Item = Ground> {
+pub(super) fn stated(model: &Model) -> impl Iterator<Item = Ground> {
     let particles = model.particles().iter().map(|particle| particle.name());
     let forces = model.forces().iter().map(|force| force.name());
     let reactions = model.reactions().iter().map(|reaction| reaction.name());

@@ -2,13 +2,13 @@
 
 use cas::Effort;
 
-use super::energy::{examined, names_without_potential, total_potential};
+use super::energy::{examined, grounds_of_potential, names_without_potential, total_potential};
 use super::kinematics::Kinematics;
 use super::stage::{Stage, listed};
 use super::work::remaining_work;
 use super::{DeriveError, Derived};
 use crate::model::Model;
-use crate::record::{Formal, Rule, Side, Statement};
+use crate::record::{Formal, Ground, Rule, Side, Statement};
 
 /// `L = T - V` with the potential of all forces that have one.
 ///
@@ -23,19 +23,21 @@ pub fn lagrangian(model: &Model, effort: &Effort) -> Result<Derived, DeriveError
     let mut stage = Stage::titled(model, effort, "lagrangian", "Lagrangian");
     let difference = kinematics.kinetic_energy() - total_potential(&forces);
     let shown = stage.collected(difference, &kinematics.leads());
+    let particles = model.particles().iter();
+    let particles = particles.map(|particle| Ground::stated(particle.name()));
     let name = Formal::kinetic_energy().minus(Formal::potential());
     stage.stated(
         "definition",
         Statement::defined(Formal::Lagrangian, shown),
         Rule::DefinitionOfLagrangian,
-        [],
+        particles.chain(grounds_of_potential(&forces)),
     );
     stage.equal(
         "collected",
         Side::named(name, difference),
         Side::named(Formal::Lagrangian, shown),
         Rule::CollectedForm,
-        [],
+        [Ground::step("lagrangian.definition")],
     );
     stage.show(Statement::defined(Formal::Lagrangian, shown));
     let beside = names_without_potential(&forces);

@@ -172,10 +172,7 @@ pub fn projection(model: &Model, effort: &Effort) -> Result<Derived, DeriveError
             Side::named(left.clone(), inertia),
             Side::named(right, forces + reactions),
         );
-        let grounds = model
-            .particles()
-            .iter()
-            .map(|particle| Ground::stated(particle.name()));
+        let grounds = super::equations::stated(model);
         stage.stated(&coordinate.to_string(), law, Rule::ProjectionOnColumn, grounds);
         let shown = stage.collected(inertia, &leads);
         stage.equal(

@@ -3,7 +3,7 @@
 use cas::Effort;
 use cas::calculus::derivative;
 
-use super::energy::{Examined, Finding, Reason, examined, total_potential};
+use super::energy::{Examined, Finding, Reason, examined, grounds_of_potential, total_potential};
 use super::kinematics::Kinematics;
 use super::stage::Stage;
 use super::{DeriveError, Derived};
@@ -50,7 +50,7 @@ pub fn potential(model: &Model, effort: &Effort) -> Result<Derived, DeriveError>
         Side::named(Formal::potential(), total),
         Side::of(shown),
         Rule::CollectedForm,
-        [],
+        grounds_of_potential(&forces),
     );
     stage.show(Statement::defined(Formal::potential(), shown));
     Ok(Derived::new(model, stage.derivation).with_expression(shown))

@@ -151,6 +151,12 @@ fn a_rheonomic_carriage_on_a_turntable() {
     equal(motion.equations()[0], expected);
     let conditions = &motion.derivation().steps.last().expect("steps").conditions;
     assert_eq!(conditions[..], [cas::Condition::Positive(s)]);
+    let lagrangian = sheet.lagrangian();
+    let definition = lagrangian
+        .derivation()
+        .step("lagrangian.definition")
+        .expect("a step");
+    assert_eq!(definition.conditions[..], [cas::Condition::Positive(s)]);
     let potential = sheet.potential();
     assert!(
         potential
