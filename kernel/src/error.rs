@@ -119,9 +119,11 @@ impl Error {
             Self::IsFolder(_) => "name a file with the ending .ipynb",
             Self::NotFolder(_) => "name a folder, or a name that does not exist yet",
             Self::ReadOnly(_) => "write somewhere else with --output FILE, or make the file writable",
-            Self::FolderRefuses { .. } => {
-                "write somewhere else with --output FILE, or change the permissions of the folder"
-            }
+            Self::FolderRefuses { cause, .. } => match cause.kind() {
+                io::ErrorKind::NotFound => "make the folder first, or name another one",
+                io::ErrorKind::NotADirectory => "name a folder; a part of this path is a file",
+                _ => "name another folder, or change the permissions of this one",
+            },
             Self::Unreadable { .. } => "check the permissions of the file",
             Self::Unwritable { .. } => "check the permissions and the free space of the disk",
             Self::NotJson { .. } | Self::NotNotebook { .. } => {

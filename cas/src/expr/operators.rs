@@ -125,8 +125,8 @@ pub struct DecimalNumber;
 /// let half = 0.5 * x;
 /// ```
 #[diagnostic::on_unimplemented(
-    message = "a decimal number such as 0.5 is not exact",
-    label = "write this number as text: exact(\"0.5\")",
+    message = "a decimal number is not exact",
+    label = "write the number as text, as in exact(\"0.5\")",
     note = "for example exact(\"9.81\") * m, or a quotient of integers: m / 2"
 )]
 pub trait Exact {}

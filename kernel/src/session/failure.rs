@@ -128,10 +128,22 @@ fn described(error: &CompilationError, code: &str) -> Vec<String> {
         let carets = "^".repeat(last.saturating_sub(span.start_column).max(1));
         lines.push(format!("{gutter}--> line {number}, column {}", span.start_column));
         lines.push(format!("{number} | {text}"));
+        // evcxr repeats the message where the compiler has no label.
+        let label = if label.strip_prefix("error: ") == Some(&error.message()) {
+            ""
+        } else {
+            label
+        };
         let mark = format!("{gutter} | {indent}{carets} {}", label.replace('\n', " "));
         lines.push(mark.trim_end().to_owned());
     }
-    for help in error.help() {
+    // Our own messages say what to write instead; which trait of ours is missing helps nobody.
+    let of_ours = |help: &str| {
+        ["the trait `cas::", "the trait `worksheets::"]
+            .iter()
+            .any(|start| help.starts_with(start))
+    };
+    for help in error.help().into_iter().filter(|help| !of_ours(help)) {
         let mut parts = help.lines().filter(|line| !line.trim().is_empty());
         if let Some(first) = parts.next() {
             lines.push(format!("help: {first}"));

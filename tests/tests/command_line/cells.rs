@@ -47,17 +47,17 @@ const WRONG: [Wrong; 12] = [
     Wrong {
         name: "division",
         cell: "let carriage = sheet.particle(\"carriage\", m, vector(x / 0, 0, 0));",
-        words: &["x", "0", "what to do"],
+        words: &["`carriage`", "`1/0`", "divided by zero", "what to do"],
     },
     Wrong {
         name: "gravity",
         cell: "sheet.gravity(exact(\"9.81\") * x, vector(0, 0, -1));",
-        words: &["gravity", "what to do"],
+        words: &["gravity", "coordinate `x`", "what to do", "sheet.force"],
     },
     Wrong {
         name: "force",
         cell: "let push = sheet.input(\"F\", \"N\", \"push\");\nsheet.force(\"push\", \"carriage\", vector(push, 0, 0));",
-        words: &["carriage", "what to do"],
+        words: &["there is no particle `carriage`", "what to do", "declare"],
     },
     Wrong {
         name: "empty",
@@ -67,7 +67,7 @@ const WRONG: [Wrong; 12] = [
     Wrong {
         name: "decimal",
         cell: "let half = 0.5 * x;",
-        words: &["exact(\"", "line 1"],
+        words: &["decimal", "as text", "exact(\"", "line 1"],
     },
     Wrong {
         name: "rust",
@@ -115,12 +115,14 @@ fn explained(wrong: &Wrong, folder: &Path) -> Result<()> {
     );
     let executed = folder.join(&output);
     let in_cell = serde_json::to_string(&outputs(&executed, 1)?)?.replace("\\\"", "\"");
-    for word in wrong.words {
+    for word in wrong.words.iter().chain(&["code cell 2 failed", "2 of 3 run"]) {
         ensure!(
             found.stdout.contains(word),
             "{name}: `{word}` is missing in\n{}",
             found.said()
         );
+    }
+    for word in wrong.words {
         ensure!(
             in_cell.contains(word),
             "{name}: `{word}` is missing in the cell\n{in_cell}"

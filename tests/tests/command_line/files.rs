@@ -44,6 +44,20 @@ fn files_that_are_no_worksheets_are_named() -> Result<()> {
     refused(&["run", "other.ipynb"], &folder, &["python3", "not of `gudgeon`"])?;
     ensure!(std::fs::read(&path)? == before);
 
+    let mut nameless = notebook(&["1 + 1"]);
+    nameless["metadata"] = json!({});
+    written(&folder, "nameless.ipynb", &nameless)?;
+    refused(
+        &["run", "nameless.ipynb"],
+        &folder,
+        &["nameless.ipynb", "names no kernel"],
+    )?;
+
+    let mut old = notebook(&["1 + 1"]);
+    old["nbformat"] = json!(3);
+    written(&folder, "old.ipynb", &old)?;
+    refused(&["run", "old.ipynb"], &folder, &["old.ipynb", "format 3"])?;
+
     written(&folder, "list.ipynb", &json!([1, 2]))?;
     refused(&["run", "list.ipynb"], &folder, &["is not a notebook"])?;
     Ok(())
@@ -52,17 +66,18 @@ fn files_that_are_no_worksheets_are_named() -> Result<()> {
 #[test]
 fn places_that_cannot_be_written_are_refused_before_anything_runs() -> Result<()> {
     let folder = folder("places")?;
-    written(&folder, "sheet.ipynb", &notebook(&["let one = 1;"]))?;
+    let path = written(&folder, "sheet.ipynb", &notebook(&["let one = 1;"]))?;
+    let before = std::fs::read(&path)?;
     std::fs::write(folder.join("file"), "in the way")?;
     refused(
         &["run", "sheet.ipynb", "--output", "missing/out.ipynb"],
         &folder,
-        &["missing"],
+        &["missing", "make the folder first"],
     )?;
     refused(
         &["run", "sheet.ipynb", "--output", "file/out.ipynb"],
         &folder,
-        &["file"],
+        &["file", "name a folder"],
     )?;
     // What the system itself keeps anybody, root included, from writing to.
     if Path::new("/proc/self").exists() {
@@ -72,7 +87,27 @@ fn places_that_cannot_be_written_are_refused_before_anything_runs() -> Result<()
             &["/proc"],
         )?;
     }
+    refused(
+        &["install", "--prefix", "file"],
+        &folder,
+        &["file", "is not a folder"],
+    )?;
+
+    let mut permissions = std::fs::metadata(&path)?.permissions();
+    permissions.set_readonly(true);
+    std::fs::set_permissions(&path, permissions)?;
+    refused(
+        &["run", "sheet.ipynb"],
+        &folder,
+        &["sheet.ipynb", "read-only", "--output"],
+    )?;
+
     ensure!(std::fs::read_to_string(folder.join("file"))? == "in the way");
+    ensure!(std::fs::read(&path)? == before);
+    ensure!(
+        std::fs::read_dir(&folder)?.count() == 2,
+        "a refused run left a file"
+    );
     Ok(())
 }
 

@@ -3,7 +3,7 @@
 use anyhow::{Result, ensure};
 use serde_json::Value;
 
-use super::worksheet::{folder, run, run_with_data};
+use super::worksheet::{Run, folder, run, run_where_no_program_is, run_with_data};
 
 #[test]
 fn the_kernel_is_registered_and_removed_and_no_other_is_touched() -> Result<()> {
@@ -54,7 +54,7 @@ fn the_kernel_is_registered_and_removed_and_no_other_is_touched() -> Result<()> 
 }
 
 #[test]
-fn the_doctor_says_what_is_there() -> Result<()> {
+fn the_doctor_says_what_is_there_and_what_is_missing() -> Result<()> {
     let folder = folder("doctor")?;
     let found = run(&["doctor"], &folder)?;
     for part in ["cargo", "rust-src", "helper library", "npm"] {
@@ -64,5 +64,40 @@ fn the_doctor_says_what_is_there() -> Result<()> {
             found.said()
         );
     }
+    ensure!(found.code == Some(0), "worksheets run here: {}", found.said());
+    ensure!(
+        line_of(&found, "kernel").starts_with("missing")
+            && line_of(&found, "kernel").contains("gudgeon install"),
+        "nothing is installed in this home: {}",
+        found.said()
+    );
+
+    let bare = run_where_no_program_is(&["doctor"], &folder)?;
+    ensure!(bare.code == Some(1), "{}", bare.said());
+    for (name, mend) in [
+        ("cargo", "rustup"),
+        ("rust-src", "rustup component add"),
+        ("C compiler", "install the C compiler"),
+        ("npm", "install Node.js"),
+        ("jupyter", "gudgeon lab"),
+    ] {
+        let line = line_of(&bare, name);
+        ensure!(
+            line.starts_with("missing") && line.contains(mend),
+            "{name}: {}",
+            bare.said()
+        );
+    }
+    ensure!(bare.stdout.contains("cannot be run"), "{}", bare.said());
     Ok(())
+}
+
+/// The line of an examination that is about this.
+fn line_of<'said>(found: &'said Run, name: &str) -> &'said str {
+    // A word of eleven letters, then the name.
+    let about = |line: &&str| {
+        line.get(12..)
+            .is_some_and(|rest| rest.starts_with(&format!("{name} ")))
+    };
+    found.stdout.lines().find(about).unwrap_or_default()
 }

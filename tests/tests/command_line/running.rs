@@ -1,5 +1,7 @@
 //! The worksheets of the gallery run, say what they prove, and leave nothing behind.
 
+use std::path::{Path, PathBuf};
+
 use anyhow::{Result, ensure};
 use tests::program::workshop;
 use tests::repository::root;
@@ -57,14 +59,28 @@ fn gallery_worksheets_prove_everything_and_change_no_byte() -> Result<()> {
 #[test]
 fn a_session_leaves_nothing_behind() -> Result<()> {
     let folder = folder("nothing-left")?;
-    let sheet = notebook(&["let one = 1;"]);
+    let sheet = notebook(&["let one = 1;", "one + 1"]);
     written(&folder, "small.ipynb", &sheet)?;
     let found = run(&["run", "small.ipynb"], &folder)?;
     ensure!(found.code == Some(0), "{}", found.said());
+    let first = std::fs::read(folder.join("small.ipynb"))?;
+    let again = run(&["run", "small.ipynb"], &folder)?;
+    ensure!(again.code == Some(0), "{}", again.said());
+    ensure!(
+        first == std::fs::read(folder.join("small.ipynb"))?,
+        "running an executed worksheet again changed it"
+    );
     let here: Vec<_> = std::fs::read_dir(&folder)?.collect::<Result<_, _>>()?;
     ensure!(here.len() == 1, "files beside the worksheet: {here:?}");
+    let left = cell_processes_in(&folder)?;
+    ensure!(left.is_empty(), "processes of cells still run: {left:?}");
+
     // Other checks may have sessions open; one without a holder is left over, and the lock tells.
-    for session in std::fs::read_dir(workshop("data")?.join("sessions"))? {
+    // While the folder of sessions is locked none is being made.
+    let data = workshop("data")?;
+    let making = std::fs::File::open(data.join("sessions.lock"))?;
+    making.lock()?;
+    for session in std::fs::read_dir(data.join("sessions"))? {
         let lock = session?.path().join("lock");
         if let Ok(lock) = std::fs::File::open(&lock) {
             ensure!(lock.try_lock().is_err(), "an abandoned session: {lock:?}");
@@ -73,16 +89,39 @@ fn a_session_leaves_nothing_behind() -> Result<()> {
     Ok(())
 }
 
+/// The processes that run cells of worksheets in this folder, where the system lists processes as files.
+fn cell_processes_in(folder: &Path) -> Result<Vec<PathBuf>> {
+    let mark = format!("GUDGEON_FOLDER={}", folder.display());
+    let Ok(processes) = std::fs::read_dir("/proc") else {
+        return Ok(Vec::new());
+    };
+    let mut found = Vec::new();
+    for process in processes {
+        let process = process?.path();
+        let variables = std::fs::read(process.join("environ")).unwrap_or_default();
+        if variables
+            .split(|byte| *byte == 0)
+            .any(|one| one == mark.as_bytes())
+        {
+            found.push(process);
+        }
+    }
+    Ok(found)
+}
+
+/// A sledge on a rail, held by a spring.
+const SLEDGE: &str = "let mut sheet = Sheet::titled(\"Sledge on a rail\");\n\
+    let m = sheet.positive_constant(\"m\", \"kg\", \"mass\");\n\
+    let k = sheet.positive_constant(\"k\", \"N/m\", \"stiffness\");\n\
+    let x = sheet.coordinate(\"x\", \"m\", \"position\");\n\
+    let sledge = sheet.particle(\"sledge\", m, vector(x, 0, 0));\n\
+    sheet.force(\"spring\", sledge, vector(-k * x, 0, 0));";
+
 #[test]
-fn a_refuted_step_or_a_reference_that_disagrees_fails_the_run() -> Result<()> {
-    let folder = folder("refuted")?;
+fn a_reference_that_disagrees_fails_the_run() -> Result<()> {
+    let folder = folder("disagreeing")?;
     let sheet = notebook(&[
-        "let mut sheet = Sheet::titled(\"Sledge on a rail\");\n\
-         let m = sheet.positive_constant(\"m\", \"kg\", \"mass\");\n\
-         let k = sheet.positive_constant(\"k\", \"N/m\", \"stiffness\");\n\
-         let x = sheet.coordinate(\"x\", \"m\", \"position\");\n\
-         let sledge = sheet.particle(\"sledge\", m, vector(x, 0, 0));\n\
-         sheet.force(\"spring\", sledge, vector(-k * x, 0, 0));",
+        SLEDGE,
         "let mut wrong = sheet.equations().for_reference();\n\
          wrong.bias[0] = -wrong.bias[0];\n\
          let reference = worksheets::reference::Reference::new(sheet.model(), wrong);\n\
@@ -92,6 +131,26 @@ fn a_refuted_step_or_a_reference_that_disagrees_fails_the_run() -> Result<()> {
     written(&folder, "wrong.ipynb", &sheet)?;
     let found = run(&["run", "wrong.ipynb"], &folder)?;
     ensure!(found.code == Some(1), "{}", found.said());
-    ensure!(found.stdout.contains("does not agree"), "{}", found.said());
+    for part in ["2 of 2 run", "does not agree"] {
+        ensure!(found.stdout.contains(part), "{}", found.said());
+    }
+    Ok(())
+}
+
+#[test]
+fn a_refuted_step_fails_the_run() -> Result<()> {
+    let folder = folder("refuted")?;
+    // A stop that pushes along the rail does work, so the step that says it does none is refuted.
+    let sheet = notebook(&[
+        SLEDGE,
+        "sheet.normal(\"stop\", sledge, vector(1, 0, 0));",
+        "sheet.virtual_work()",
+    ]);
+    written(&folder, "wrong.ipynb", &sheet)?;
+    let found = run(&["run", "wrong.ipynb"], &folder)?;
+    ensure!(found.code == Some(1), "{}", found.said());
+    for part in ["3 of 3 run", "Refuted 1"] {
+        ensure!(found.stdout.contains(part), "{}", found.said());
+    }
     Ok(())
 }

@@ -37,10 +37,27 @@ pub(crate) fn run(arguments: &[&str], folder: &Path) -> Result<Run> {
 
 /// The same with another data folder.
 pub(crate) fn run_with_data(arguments: &[&str], folder: &Path, data: &Path) -> Result<Run> {
+    let mut command = command(arguments, folder)?;
+    command.env("GUDGEON_DATA_DIR", data);
+    finished(command)
+}
+
+/// The same on a machine that has no other program.
+pub(crate) fn run_where_no_program_is(arguments: &[&str], folder: &Path) -> Result<Run> {
+    let mut command = command(arguments, folder)?;
+    command.env("PATH", empty_workshop("command_line/no-programs")?);
+    command.env("GUDGEON_DATA_DIR", folder.join("data"));
+    finished(command)
+}
+
+fn command(arguments: &[&str], folder: &Path) -> Result<Command> {
     let mut command = Command::new(gudgeon()?);
     command.args(arguments).current_dir(folder);
     at_home(&mut command, &workshop("command_line/home")?)?;
-    command.env("GUDGEON_DATA_DIR", data);
+    Ok(command)
+}
+
+fn finished(mut command: Command) -> Result<Run> {
     let output = command.output().context("starting the program")?;
     Ok(Run::of(output))
 }

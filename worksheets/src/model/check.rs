@@ -41,6 +41,20 @@ impl Allowed {
         velocities: true,
         ..Self::POSITION
     };
+
+    /// What to use instead of a coordinate or velocity that is not allowed.
+    fn remedy(self) -> &'static str {
+        match self {
+            Self {
+                coordinates: true, ..
+            } => "use coordinates, inputs, constants and time alone",
+            Self { time: true, .. } => {
+                "use inputs, constants and time alone; a point that moves with a coordinate is a particle, and a \
+                 force that depends on the motion is stated with sheet.force(name, particle, vector(x, y, z))"
+            }
+            Self { .. } => "use constants alone",
+        }
+    }
 }
 
 impl Measured for Model {
@@ -145,14 +159,8 @@ impl Model {
                 "a reaction is an unknown; state the force by coordinates, velocities and time",
             ),
             (Role::Time, 0) if !allowed.time => refused("time", "use constants alone"),
-            (Role::Coordinate, 0) if !allowed.coordinates && allowed.time => refused(
-                "the coordinate",
-                "attach it to a particle: a point without mass may move only as prescribed",
-            ),
-            (Role::Coordinate, 0) if !allowed.coordinates => refused("the coordinate", "use constants alone"),
-            (Role::Coordinate, 1) if !allowed.velocities => {
-                refused("the velocity", "use coordinates, constants and time alone")
-            }
+            (Role::Coordinate, 0) if !allowed.coordinates => refused("the coordinate", allowed.remedy()),
+            (Role::Coordinate, 1) if !allowed.velocities => refused("the velocity", allowed.remedy()),
             (Role::Coordinate, primes) if primes > 1 => refused(
                 "the acceleration",
                 "state the force by coordinates, velocities and time; inertia comes from the masses",

@@ -99,7 +99,7 @@ pub enum ModelError {
         declared: Expr,
     },
     /// An expression without a value.
-    #[error("{place} has no value: it divides by zero or takes a root or logarithm of a negative number")]
+    #[error("{place} has no value: `{part:?}` in it is undefined")]
     Undefined {
         /// Where it stands.
         place: String,
@@ -263,7 +263,10 @@ impl ModelError {
                 ),
             ),
             Self::OtherArguments { .. } => "use the value that the declaration returned".into(),
-            Self::Undefined { part, .. } => format!("look at `{part:?}`"),
+            Self::Undefined { .. } => {
+                "change that part: nothing can be divided by zero, and a negative number has no root or logarithm"
+                    .into()
+            }
             Self::Dimension { source, .. } => source.hint().into(),
             Self::WrongDimension { expected, .. } => format!(
                 "check the units of its parts: a factor in {} is expected as the whole; give a bare number its unit by declaring it as a constant",

@@ -235,7 +235,7 @@ fn positions_are_checked() {
     refused(
         model.particle("b", m, vector(0, x / 0, 0)),
         "component y",
-        "look at",
+        "divided by zero",
     );
     refused(
         model.particle("b", m, vector(0, x + m, 0)),
@@ -344,7 +344,7 @@ fn ends_are_checked() {
     refused(
         model.link("rod", cart, vector(x, 0, 0)),
         "the coordinate",
-        "attach it to a particle",
+        "moves with a coordinate is a particle",
     );
     refused(
         model.link("rod", vector(0, 0, 0), vector(0, 0, 0)),
@@ -359,7 +359,7 @@ fn ends_are_checked() {
     refused(
         model.spring("s", cart, vector(0, 0, 0), x, 0),
         "the coordinate",
-        "attach",
+        "stated with sheet.force",
     );
     assert!(model.forces().is_empty() && model.reactions().is_empty());
 }

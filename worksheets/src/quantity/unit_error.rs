@@ -30,7 +30,7 @@ pub enum UnitError {
         suggestion: String,
     },
     /// A part of the text is no unit.
-    #[error("`{code}` is no unit: `{part}` is not known")]
+    #[error("{} is not a known unit", place_of(part, code))]
     Unknown {
         /// The text as given.
         code: String,
@@ -81,6 +81,15 @@ pub enum UnitError {
         /// The limit.
         limit: i64,
     },
+}
+
+/// The part, and the text that it stands in where that is more.
+fn place_of(part: &str, code: &str) -> String {
+    if part == code {
+        format!("`{part}`")
+    } else {
+        format!("`{part}` in `{code}`")
+    }
 }
 
 impl UnitError {
