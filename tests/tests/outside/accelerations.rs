@@ -3,13 +3,17 @@
 use std::collections::HashMap;
 
 use anyhow::{Context, Result, ensure};
+use cas::calculus::derivative;
 use cas::sample::evaluated;
 use cas::{Effort, Expr, Substitution};
 use tests::motion::accelerations;
 use tests::published::{Probe, Published, all};
 
-/// How far a number may be off, relative to the larger of one and itself.
-const TOLERANCE: f64 = 1e-11;
+/// How far an acceleration may be off, relative to itself.
+const OF_ACCELERATIONS: f64 = 1e-12;
+
+/// How far a reaction may be off, relative to itself.
+const OF_REACTIONS: f64 = 1e-11;
 
 /// The solution of linear equations by elimination with the largest pivot.
 fn solved(mut rows: Vec<Vec<f64>>) -> Option<Vec<f64>> {
@@ -57,11 +61,9 @@ fn found_accelerations(system: &Published, given: &HashMap<Expr, f64>) -> Result
     solved(rows).with_context(|| format!("{}: a singular mass matrix", system.source))
 }
 
-#[track_caller]
-fn close(found: f64, expected: f64, what: &str, source: &str) -> Result<()> {
-    let allowed = TOLERANCE * expected.abs().max(1.0);
+fn close(found: f64, expected: f64, tolerance: f64, what: &str, source: &str) -> Result<()> {
     ensure!(
-        (found - expected).abs() <= allowed,
+        (found - expected).abs() <= tolerance * expected.abs(),
         "{source}: {what} is {found}, published {expected}"
     );
     Ok(())
@@ -74,7 +76,13 @@ fn accelerations_at_probe_states_are_the_published_ones() -> Result<()> {
         for probe in &system.probes {
             let found = found_accelerations(&system, &values(probe)?)?;
             for (found, expected) in found.iter().zip(&probe.accelerations) {
-                close(*found, *expected, "an acceleration", system.source)?;
+                close(
+                    *found,
+                    *expected,
+                    OF_ACCELERATIONS,
+                    "an acceleration",
+                    system.source,
+                )?;
                 compared += 1;
             }
         }
@@ -83,57 +91,91 @@ fn accelerations_at_probe_states_are_the_published_ones() -> Result<()> {
     Ok(())
 }
 
-/// The reactions that Newton's equations need, at the accelerations found, by least squares.
+/// Newton's equations as rows `directions . magnitudes = inertia - applied`, at the published accelerations.
+fn rows_for_reactions(system: &Published, probe: &Probe, unknowns: &[Expr]) -> Result<Vec<Vec<f64>>> {
+    let model = system.sheet.model();
+    let mut given = values(probe)?;
+    let published = probe.accelerations.iter().copied();
+    given.extend(accelerations(model).into_iter().map(Expr::from).zip(published));
+    let value = |expr: Expr| {
+        evaluated(expr, |part| given.get(&part).copied())
+            .with_context(|| format!("{}: {expr}", system.source))
+    };
+    let at_zero = Substitution::new(unknowns.iter().map(|unknown| (*unknown, Expr::zero())));
+    let newton = worksheets::derive::newton(model, &Effort::default())?;
+    let steps = newton.derivation().steps.iter();
+    steps
+        .map(|step| {
+            let difference = step.statement.left.value - step.statement.right.value;
+            let mut row = Vec::new();
+            for unknown in unknowns {
+                row.push(-value(derivative(difference, *unknown)?)?);
+            }
+            row.push(value(difference.substituted(&at_zero))?);
+            Ok(row)
+        })
+        .collect()
+}
+
+/// The magnitudes by least squares: a row may hold reactions that nobody stated.
+fn magnitudes(rows: &[Vec<f64>], unknowns: usize) -> Option<Vec<f64>> {
+    let normal = (0..unknowns).map(|i| {
+        (0..=unknowns)
+            .map(|j| rows.iter().map(|row| row[i] * row[j]).sum())
+            .collect()
+    });
+    solved(normal.collect())
+}
+
+/// The largest amount by which a row is not satisfied, relative to the largest number in it.
+fn residual(rows: &[Vec<f64>], magnitudes: &[f64]) -> f64 {
+    let misses = rows.iter().map(|row| {
+        let products: Vec<f64> = row.iter().zip(magnitudes).map(|(a, b)| a * b).collect();
+        let right = row[magnitudes.len()];
+        let largest = products
+            .iter()
+            .fold(right.abs(), |most, part| most.max(part.abs()));
+        let miss = (products.iter().sum::<f64>() - right).abs();
+        if miss > 0.0 { miss / largest.max(1.0) } else { miss }
+    });
+    misses.fold(0.0, f64::max)
+}
+
 #[test]
 fn reactions_at_probe_states_are_the_published_ones() -> Result<()> {
-    let mut compared = 0;
+    let (mut compared, mut complete) = (0, 0);
     for system in all() {
         let model = system.sheet.model();
-        let newton = worksheets::derive::newton(model, &Effort::default())?;
+        let reactions = model.reactions();
+        let unknowns: Vec<Expr> = reactions
+            .iter()
+            .map(|reaction| reaction.magnitude().into())
+            .collect();
         for probe in system.probes.iter().filter(|probe| !probe.reactions.is_empty()) {
-            let mut given = values(probe)?;
-            let found = found_accelerations(&system, &given)?;
-            given.extend(accelerations(model).into_iter().map(Expr::from).zip(found));
-            let unknowns: Vec<Expr> = model
-                .reactions()
-                .iter()
-                .map(|reaction| reaction.magnitude().into())
-                .collect();
-            // Rows of `directions . magnitudes = inertia - applied`, then the normal equations of them.
-            let mut rows = Vec::new();
-            for step in &newton.derivation().steps {
-                let difference = step.statement.left.value - step.statement.right.value;
-                let at_zero = Substitution::new(unknowns.iter().map(|unknown| (*unknown, Expr::zero())));
-                let value = |expr: Expr| {
-                    evaluated(expr, |part| given.get(&part).copied())
-                        .with_context(|| format!("{}: {expr}", system.source))
-                };
-                let mut row = Vec::new();
-                for unknown in &unknowns {
-                    row.push(-value(cas::calculus::derivative(difference, *unknown)?)?);
-                }
-                row.push(value(difference.substituted(&at_zero))?);
-                rows.push(row);
-            }
-            let size = unknowns.len();
-            let normal = (0..size).map(|i| {
-                (0..=size)
-                    .map(|j| rows.iter().map(|row| row[i] * row[j]).sum())
-                    .collect()
-            });
-            let magnitudes =
-                solved(normal.collect()).with_context(|| format!("{}: reactions", system.source))?;
+            let rows = rows_for_reactions(&system, probe, &unknowns)?;
+            let found =
+                magnitudes(&rows, unknowns.len()).with_context(|| format!("{}: reactions", system.source))?;
             for (name, expected) in &probe.reactions {
-                let place = model
-                    .reactions()
+                let place = reactions
                     .iter()
                     .position(|reaction| reaction.name().as_str() == *name);
                 let place = place.with_context(|| format!("{}: no reaction {name}", system.source))?;
-                close(magnitudes[place], *expected, name, system.source)?;
+                close(found[place], *expected, OF_REACTIONS, name, system.source)?;
                 compared += 1;
+            }
+            // Where every reaction is stated, each of Newton's equations holds, not only their best fit.
+            if rows.len() == unknowns.len() + model.coordinates().len() {
+                let miss = residual(&rows, &found);
+                ensure!(
+                    miss <= OF_REACTIONS,
+                    "{}: Newton's equations miss by {miss}",
+                    system.source
+                );
+                complete += 1;
             }
         }
     }
-    ensure!(compared > 8, "only {compared} reactions");
+    ensure!(compared > 15, "only {compared} reactions");
+    ensure!(complete > 8, "only {complete} systems with every reaction");
     Ok(())
 }
