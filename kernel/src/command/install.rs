@@ -22,6 +22,8 @@ pub(super) fn install(place: &Place) -> Result<(), Error> {
 }
 
 pub(super) fn install_at(place: &kernelspec::Place) -> Result<(), Error> {
+    // Preparing takes minutes: a place that cannot be used is said before.
+    kernelspec::check(place)?;
     let progress = Progress::of_unknown_length();
     let data = DataFolder::open()?;
     let library = Library::prepare(&data, &progress)?;

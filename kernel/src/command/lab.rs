@@ -3,7 +3,7 @@
 use super::install::install_at;
 use crate::error::Error;
 use crate::kernelspec::{self, Found, Place};
-use crate::library::{DataFolder, GALLERY, write};
+use crate::library::{DataFolder, GALLERY, Library, write};
 use crate::notebook::absolute;
 use clap::Args;
 use std::ffi::OsString;
@@ -43,12 +43,10 @@ impl Lab {
         let data = DataFolder::open()?;
         let jupyter = find_jupyter(&data)?;
         let place = Place::of_user()?;
-        match kernelspec::find(&place) {
-            Found::Current => {}
-            Found::Nothing | Found::Outdated | Found::Foreign => {
-                println!("registering the kernel with Jupyter");
-                install_at(&place)?;
-            }
+        // A new compiler needs a new library, and Jupyter would not wait for a kernel that builds one.
+        if kernelspec::find(&place) != Found::Current || Library::find(&data)?.is_none() {
+            println!("registering the kernel with Jupyter");
+            install_at(&place)?;
         }
         let written = write_missing(GALLERY, &folder)?;
         trust(&jupyter, &written);

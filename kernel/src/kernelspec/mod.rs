@@ -13,6 +13,7 @@ use crate::progress::Progress;
 use serde_json::{Value, json};
 use std::fs;
 use std::path::{Path, PathBuf};
+use tempfile::TempDir;
 
 /// The name under which notebooks ask for the kernel.
 pub const NAME: &str = "gudgeon";
@@ -62,25 +63,36 @@ pub fn find(place: &Place) -> Found {
     }
 }
 
+/// Fails unless a kernelspec can be written to this place.
+///
+/// # Errors
+/// When the place holds a kernelspec that is not ours, or cannot be written.
+pub fn check(place: &Place) -> Result<(), Error> {
+    if find(place) == Found::Foreign {
+        return Err(Error::ForeignKernelspec(place.folder()));
+    }
+    folder_beside(place).map(drop)
+}
+
+/// A folder beside the kernelspec, which goes away when it is dropped.
+fn folder_beside(place: &Place) -> Result<TempDir, Error> {
+    let kernels = place.kernels();
+    fs::create_dir_all(&kernels)
+        .and_then(|()| tempfile::Builder::new().prefix(".gudgeon-").tempdir_in(&kernels))
+        .map_err(|cause| Error::FolderRefuses {
+            folder: kernels,
+            cause,
+        })
+}
+
 /// Writes the kernelspec: first into a folder beside, then in one step to its place.
 ///
 /// # Errors
 /// When the place holds a kernelspec that is not ours, or cannot be written.
 pub fn install(place: &Place, progress: &Progress) -> Result<Typesetting, Error> {
+    check(place)?;
     let folder = place.folder();
-    if find(place) == Found::Foreign {
-        return Err(Error::ForeignKernelspec(folder));
-    }
-    let kernels = place.kernels();
-    let refused = |cause| Error::FolderRefuses {
-        folder: kernels.clone(),
-        cause,
-    };
-    fs::create_dir_all(&kernels).map_err(refused)?;
-    let beside = tempfile::Builder::new()
-        .prefix(".gudgeon-")
-        .tempdir_in(&kernels)
-        .map_err(refused)?;
+    let beside = folder_beside(place)?;
     let fresh = beside.path().join(NAME);
     for (name, content) in [
         ("kernel.json", description()?.as_slice()),
@@ -92,7 +104,10 @@ pub fn install(place: &Place, progress: &Progress) -> Result<Typesetting, Error>
     }
     let typesetting = typesetter::place(&folder, &fresh, progress)?;
     remove_ours(&folder)?;
-    fs::rename(&fresh, &folder).map_err(refused)?;
+    fs::rename(&fresh, &folder).map_err(|cause| Error::FolderRefuses {
+        folder: place.kernels(),
+        cause,
+    })?;
     Ok(typesetting)
 }
 

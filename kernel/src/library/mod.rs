@@ -12,11 +12,13 @@
 mod data_folder;
 mod sources;
 mod template;
+mod trim;
 
 pub use data_folder::DataFolder;
 pub(crate) use sources::GALLERY;
 pub use sources::content_hash;
 pub(crate) use template::build_in_this_process;
+pub(crate) use trim::belongs_to_cells;
 
 use crate::error::Error;
 use crate::progress::Progress;
@@ -53,9 +55,11 @@ impl Library {
         if let Some(ready) = Self::find(data)? {
             return Ok(ready);
         }
-        let _held = data.lock("library.lock", || {
+        let held = data.lock("library.lock", || {
             progress.say("waiting for another process that is preparing the helper library");
         })?;
+        // Processes started from here hold the lock too: if this one is killed, the next waits for its compilers.
+        let _ = rustix::io::fcntl_setfd(&held, rustix::io::FdFlags::empty());
         if let Some(ready) = Self::find(data)? {
             return Ok(ready);
         }
@@ -73,6 +77,7 @@ impl Library {
         sources::write(&library.sources())?;
         template::vendor(&library, progress)?;
         template::build(&library, progress)?;
+        trim::trim(&library)?;
         write(&library.folder.join(STAMP), b"")?;
         Ok(library)
     }

@@ -11,7 +11,7 @@ use toml::{Table, Value};
 include!(concat!(env!("OUT_DIR"), "/embedded.rs"));
 
 /// Raised when the layout of a library folder or the way it is built changes.
-const LAYOUT: &str = "library layout 1";
+const LAYOUT: &str = "library layout 2";
 
 /// The crates that cells are built against.
 const CRATES: [&str; 2] = ["cas", "worksheets"];

@@ -4,6 +4,7 @@ use super::Library;
 use crate::error::Error;
 use crate::progress::Progress;
 use crate::session::{SessionFolder, start_evcxr};
+use serde_json::Value;
 use std::io::{BufRead, BufReader};
 use std::process::{Command, Stdio};
 
@@ -78,10 +79,7 @@ fn run(mut command: Command, name: &str, mut line_seen: impl FnMut(&str)) -> Res
     if let Some(stderr) = child.stderr.take() {
         for line in BufReader::new(stderr).lines().map_while(Result::ok) {
             line_seen(&line);
-            // What is being compiled is progress; the advice of a child is given by its parent.
-            if !line.trim_start().starts_with("Compiling ") && !line.starts_with(" next: ") {
-                said.push(line);
-            }
+            said.extend(complaint(&line));
         }
     }
     if child.wait().map_err(missing)?.success() {
@@ -92,4 +90,46 @@ fn run(mut command: Command, name: &str, mut line_seen: impl FnMut(&str)) -> Res
         program: name.to_owned(),
         said: said[skipped..].join("\n"),
     })
+}
+
+/// What a line says about a failure, for a person.
+///
+/// What is being compiled is progress, and the advice of a child is given by its parent.
+/// evcxr repeats all that cargo told it as JSON; only errors of the compiler are for people in that.
+fn complaint(line: &str) -> Vec<String> {
+    let line = line.strip_prefix("STDOUT:").unwrap_or(line);
+    if line.starts_with('{') {
+        let told: Value = serde_json::from_str(line).unwrap_or_default();
+        let rendered = told["message"]["rendered"].as_str().unwrap_or_default();
+        let is_error = told["message"]["level"] == "error";
+        return rendered.lines().filter(|_| is_error).map(str::to_owned).collect();
+    }
+    let start = line.trim_start();
+    let silent = start.is_empty() || start.starts_with("Compiling ") || line.starts_with(" next: ");
+    if silent { Vec::new() } else { vec![line.to_owned()] }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn only_errors_are_told() {
+        for silent in [
+            "   Compiling one v1.0.0",
+            "",
+            " next: run `gudgeon doctor`",
+            r#"STDOUT:{"reason":"compiler-artifact","package_id":"one"}"#,
+            r#"{"reason":"compiler-message","message":{"level":"warning","rendered":"unused"}}"#,
+            "{cut off",
+        ] {
+            assert_eq!(complaint(silent), Vec::<String>::new(), "{silent}");
+        }
+        assert_eq!(
+            complaint("error: linker `cc` not found"),
+            ["error: linker `cc` not found"]
+        );
+        let message = r#"{"message":{"level":"error","rendered":"error: no `x`\n --> here\n"}}"#;
+        assert_eq!(complaint(message), ["error: no `x`", " --> here"]);
+    }
 }

@@ -9,7 +9,7 @@
 
 use super::PRELUDE;
 use crate::error::Error;
-use crate::library::{DataFolder, Library, write};
+use crate::library::{DataFolder, Library, belongs_to_cells, write};
 use std::fs::{self, File};
 use std::path::{Path, PathBuf};
 use toml::{Table, Value};
@@ -178,16 +178,24 @@ fn remove_abandoned(sessions: &Path) {
 }
 
 /// Copies a folder with its times, by which cargo judges what is up to date.
+///
+/// What was compiled for other crates than that of the cells is never written again: a second name for it is enough,
+/// and spares each session some hundred megabytes.
 fn copy_folder(from: &Path, to: &Path) -> std::io::Result<()> {
     let mut waiting = vec![(from.to_path_buf(), to.to_path_buf())];
     while let Some((from, to)) = waiting.pop() {
         fs::create_dir_all(&to)?;
+        let compiled = from.ends_with("deps");
         for entry in fs::read_dir(&from)? {
             let entry = entry?;
             let target = to.join(entry.file_name());
             if entry.file_type()?.is_dir() {
                 waiting.push((entry.path(), target));
-            } else {
+                continue;
+            }
+            let linked =
+                compiled && !belongs_to_cells(&target) && fs::hard_link(entry.path(), &target).is_ok();
+            if !linked {
                 fs::copy(entry.path(), &target)?;
                 let modified = entry.metadata()?.modified()?;
                 File::options()
@@ -223,6 +231,21 @@ mod tests {
         let copy = to.join("deep/file");
         assert_eq!(fs::read(&copy).unwrap(), b"content");
         assert_eq!(fs::metadata(&copy).unwrap().modified().unwrap(), time);
+    }
+
+    #[test]
+    fn only_the_outputs_of_cells_are_copies() {
+        use std::os::unix::fs::MetadataExt;
+        let outer = tempfile::tempdir().unwrap();
+        let from = outer.path().join("from");
+        let to = outer.path().join("to");
+        let names = ["deps/libcas-1.rlib", "deps/libctx-2.so", "deps/ctx-2.d", "state"];
+        for name in names {
+            write(&from.join(name), b"content").unwrap();
+        }
+        copy_folder(&from, &to).unwrap();
+        let shared = names.map(|name| fs::metadata(to.join(name)).unwrap().nlink() == 2);
+        assert_eq!(shared, [true, false, false, false]);
     }
 
     #[test]
