@@ -5,6 +5,20 @@
 
 mod arrangement;
 mod latex;
+mod latex_command;
+mod latex_equations;
+#[cfg(test)]
+mod latex_examples;
+mod latex_factor;
+mod latex_layout;
+mod latex_named;
+mod latex_names;
+mod latex_read;
+#[cfg(test)]
+mod latex_refusals;
+#[cfg(test)]
+mod latex_round_trip;
+mod latex_token;
 mod lines;
 mod order;
 mod pieces;
@@ -17,6 +31,8 @@ mod width;
 
 pub use arrangement::Arrangement;
 pub use latex::{latex, latex_name};
+pub use latex_equations::{LatexLine, read_latex_equations};
+pub use latex_read::read_latex;
 pub use lines::{latex_equation, latex_lines, plain_equation};
 pub use plain::plain;
 pub use read::{ReadError, ReadFault, read};

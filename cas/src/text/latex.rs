@@ -36,8 +36,30 @@ fn hold(expr: Expr) -> Hold {
     match expr.kind() {
         Kind::Elementary(Function::Exponential, _) => Hold::Power,
         Kind::Elementary(..) => Hold::Product,
+        // The order of a derivative stands where a power would.
+        Kind::Symbol(symbol) if symbol.primes() > 2 => Hold::Power,
         Kind::Power(_, exponent) if exponent.is_negative() => Hold::Product,
         _ => plain_hold(expr),
+    }
+}
+
+/// Whether a factor would run into a number before it.
+fn begins_with_digit(factor: Expr) -> bool {
+    let half = |exponent: &Rational| exponent.as_small() == Some((1, 2));
+    match factor.kind() {
+        Kind::Power(base, exponent) if !exponent.is_negative() && !half(exponent) => {
+            let number = base.as_number();
+            number.is_some_and(|number| number.is_integer() && !number.is_negative())
+        }
+        _ => false,
+    }
+}
+
+/// What stands between a number and the factors after it.
+pub(super) fn behind_number(factors: &[Expr]) -> &'static str {
+    match factors.first() {
+        Some(first) if begins_with_digit(*first) => " \\cdot ",
+        _ => " ",
     }
 }
 
@@ -47,7 +69,11 @@ pub(super) fn factors(factors: &[Expr]) -> Vec<Piece> {
     let mut after_function = false;
     for (place, factor) in factors.iter().enumerate() {
         if place > 0 {
-            pieces.push(text(if after_function { "\\, " } else { " " }));
+            pieces.push(text(match (begins_with_digit(*factor), after_function) {
+                (true, _) => " \\cdot ",
+                (false, true) => "\\, ",
+                (false, false) => " ",
+            }));
         }
         let base = match factor.kind() {
             Kind::Power(base, _) => *base,
@@ -138,7 +164,7 @@ fn quotient(expr: Expr, signed: bool, arrangement: &Arrangement) -> Vec<Piece> {
         if !number.is_empty() || quotient.above.is_empty() {
             pieces.push(text(if number.is_empty() { "1".to_owned() } else { number }));
             if !quotient.above.is_empty() {
-                pieces.push(text(" "));
+                pieces.push(text(behind_number(&quotient.above)));
             }
         }
         pieces.extend(factors(&quotient.above));
@@ -176,7 +202,7 @@ fn line(number: &str, is_one: bool, parts: &[Expr]) -> Vec<Piece> {
         [only] if is_one => vec![Piece::Whole(*only, Hold::Sum)],
         _ if is_one => factors(parts),
         _ => {
-            let mut pieces = vec![text(format!("{number} "))];
+            let mut pieces = vec![text(format!("{number}{}", behind_number(parts)))];
             pieces.extend(factors(parts));
             pieces
         }
@@ -240,7 +266,7 @@ fn symbol_latex(symbol: Symbol) -> String {
         .map_or((name, None), |(stem, index)| (stem, Some(index)));
     let stem = dots(&letters(stem), symbol.primes().into());
     match index.map(index_latex).filter(|index| !index.is_empty()) {
-        Some(index) => format!("{stem}_{{{index}}}"),
+        Some(index) => indexed(&stem, &index),
         None => stem,
     }
 }
@@ -251,7 +277,16 @@ pub fn latex_name(name: &str) -> String {
     let (stem, index) = name.split_once('_').unwrap_or((name, ""));
     match index_latex(index) {
         index if index.is_empty() => letters(stem),
-        index => format!("{}_{{{index}}}", letters(stem)),
+        index => indexed(&letters(stem), &index),
+    }
+}
+
+/// A stem with its index; a stem that ends with an index of its own is held together.
+fn indexed(stem: &str, index: &str) -> String {
+    if stem.ends_with('}') && stem.contains("_{") && !stem.starts_with("\\d") && !stem.starts_with('{') {
+        format!("{{{stem}}}_{{{index}}}")
+    } else {
+        format!("{stem}_{{{index}}}")
     }
 }
 
@@ -265,7 +300,7 @@ fn index_latex(index: &str) -> String {
 }
 
 /// Names of Greek letters that have a command of their own; `phi`, `epsilon` as the trade writes them.
-const GREEK: [&str; 33] = [
+pub(super) const GREEK: [&str; 33] = [
     "alpha", "beta", "gamma", "delta", "zeta", "eta", "theta", "iota", "kappa", "lambda", "mu", "nu", "xi",
     "rho", "sigma", "tau", "upsilon", "chi", "psi", "omega", "Gamma", "Delta", "Theta", "Lambda", "Xi", "Pi",
     "Sigma", "Upsilon", "Phi", "Psi", "Omega", "phi", "epsilon",

@@ -39,6 +39,12 @@ impl Scope {
         }
     }
 
+    /// The declared symbols and functions; nothing where every name may be used.
+    pub(super) fn declared(&self) -> Option<(&BTreeSet<Name>, &BTreeMap<Name, usize>)> {
+        let declared = self.declared.as_ref()?;
+        Some((&declared.symbols, &declared.functions))
+    }
+
     pub(super) fn refuses_symbol(&self, name: Name) -> Option<ReadFault> {
         let declared = self.declared.as_ref()?;
         (!declared.symbols.contains(&name)).then(|| undeclared(name, declared.symbols.iter()))
@@ -60,7 +66,11 @@ impl Scope {
 }
 
 fn undeclared<'a>(name: Name, known: impl Iterator<Item = &'a Name>) -> ReadFault {
-    let text = name.as_str();
+    undeclared_text(name.as_str(), known)
+}
+
+/// The fault of a text that names nothing, with the nearest name that is known.
+pub(super) fn undeclared_text<'a>(text: &str, known: impl Iterator<Item = &'a Name>) -> ReadFault {
     let nearest = known
         .map(|known| (distance(text, known.as_str()), known.as_str()))
         .filter(|(distance, known)| *distance <= 2 && *distance < known.chars().count())

@@ -1,0 +1,389 @@
+//! The tokens of LaTeX formulas: characters and commands with the places where they stand.
+
+use super::latex::GREEK;
+use super::latex_command::{Called, advice, function, is_environment, is_ignored, is_size, is_space};
+use super::read::ReadFault;
+
+/// What a token is.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub(super) enum Mark {
+    /// A letter in italics.
+    Letter(char),
+    /// A digit.
+    Digit(char),
+    /// A full stop: the decimal point, or the end of a sentence.
+    Point,
+    /// A comma or semicolon.
+    Comma,
+    /// A Greek letter by its name.
+    Greek(&'static str),
+    /// A word in upright letters.
+    Word(String),
+    /// The number pi.
+    Pi,
+    /// A function with a command of its own.
+    Function(Called),
+    /// A fraction bar.
+    Fraction,
+    /// The sign of a root.
+    Root,
+    /// Dots over what follows.
+    Dots(u8),
+    /// The sign of partial derivatives.
+    Partial,
+    /// A prime.
+    Prime,
+    /// An opening bracket.
+    Open(char),
+    /// A closing bracket.
+    Close(char),
+    /// An opening brace, which is not printed.
+    OpenGroup,
+    /// A closing brace, which is not printed.
+    CloseGroup,
+    /// What follows is an index.
+    Below,
+    /// What follows is a power.
+    Above,
+    Plus,
+    Minus,
+    Times,
+    Slash,
+    Equals,
+    /// A vertical line.
+    Bar,
+    /// The sign at which columns are aligned.
+    Column,
+    /// The end of a line.
+    Break,
+    /// The beginning of a formula or environment, with the text that ends it.
+    Begin(String),
+    /// The end of a formula or environment.
+    End(String),
+}
+
+/// A token and where it stands.
+#[derive(Clone, Debug)]
+pub(super) struct Token {
+    pub(super) mark: Mark,
+    /// Its first character, counted from one.
+    pub(super) place: usize,
+    /// How many characters it has.
+    pub(super) length: usize,
+    /// Whether white space or a spacing command stands before it.
+    pub(super) spaced: bool,
+    /// Whether a spacing command stands before it.
+    pub(super) apart: bool,
+    /// For a brace, the index of its partner.
+    pub(super) partner: usize,
+}
+
+/// A fault and the place where it is.
+pub(super) type Placed = (ReadFault, usize);
+
+/// Takes a text apart.
+pub(super) fn tokens(source: &str) -> Result<Vec<Token>, Placed> {
+    let mut lexer = Lexer {
+        source: source.chars().collect(),
+        at: 0,
+        spaced: false,
+        apart: false,
+        in_dollars: None,
+        tokens: Vec::new(),
+    };
+    while lexer.at < lexer.source.len() {
+        lexer.step()?;
+    }
+    Ok(lexer.tokens)
+}
+
+struct Lexer {
+    source: Vec<char>,
+    at: usize,
+    spaced: bool,
+    apart: bool,
+    in_dollars: Option<usize>,
+    tokens: Vec<Token>,
+}
+
+impl Lexer {
+    fn push(&mut self, mark: Mark, from: usize) {
+        self.tokens.push(Token {
+            mark,
+            place: from + 1,
+            length: self.at - from,
+            spaced: std::mem::take(&mut self.spaced),
+            apart: std::mem::take(&mut self.apart),
+            partner: 0,
+        });
+    }
+
+    fn peek(&self) -> Option<char> {
+        self.source.get(self.at).copied()
+    }
+
+    fn space(&mut self, apart: bool) {
+        self.spaced = true;
+        self.apart |= apart;
+    }
+
+    fn skip_space(&mut self) {
+        while self.peek().is_some_and(char::is_whitespace) {
+            self.at += 1;
+        }
+    }
+
+    fn step(&mut self) -> Result<(), Placed> {
+        let from = self.at;
+        let c = self.source[from];
+        self.at += 1;
+        let mark = match c {
+            c if c.is_whitespace() => {
+                self.space(false);
+                return Ok(());
+            }
+            '~' => {
+                self.space(true);
+                return Ok(());
+            }
+            '%' => {
+                // The rest of the line is a remark.
+                while self.peek().is_some_and(|c| c != '\n') {
+                    self.at += 1;
+                }
+                return Ok(());
+            }
+            '\\' => return self.command(from),
+            '$' => self.dollars(),
+            '}' => {
+                self.close_group(from);
+                return Ok(());
+            }
+            '{' => Mark::OpenGroup,
+            '(' | '[' => Mark::Open(c),
+            ')' | ']' => Mark::Close(c),
+            '^' => Mark::Above,
+            '_' => Mark::Below,
+            '\'' | '\u{2019}' | '\u{2032}' => Mark::Prime,
+            '+' => Mark::Plus,
+            '-' | '\u{2212}' => Mark::Minus,
+            '*' | '\u{b7}' | '\u{d7}' => Mark::Times,
+            '/' => Mark::Slash,
+            '=' => Mark::Equals,
+            '|' => Mark::Bar,
+            '&' => Mark::Column,
+            '.' => Mark::Point,
+            ',' | ';' => Mark::Comma,
+            c if c.is_ascii_digit() => Mark::Digit(c),
+            c if c.is_alphabetic() => Mark::Letter(c),
+            found => return Err((ReadFault::Sign { found }, from + 1)),
+        };
+        self.push(mark, from);
+        Ok(())
+    }
+
+    fn dollars(&mut self) -> Mark {
+        let mut count = 1;
+        if self.peek() == Some('$') && self.in_dollars != Some(1) {
+            self.at += 1;
+            count = 2;
+        }
+        let text = "$".repeat(count);
+        match self.in_dollars.take() {
+            Some(_) => Mark::End(text),
+            None => {
+                self.in_dollars = Some(count);
+                Mark::Begin(text)
+            }
+        }
+    }
+
+    /// An empty pair of braces after a sign only sets the spacing of that sign.
+    fn close_group(&mut self, from: usize) {
+        let is_empty = matches!(self.tokens.last(), Some(last) if last.mark == Mark::OpenGroup);
+        let before = self.tokens.len().checked_sub(2).map(|at| &self.tokens[at].mark);
+        let void = matches!(
+            before,
+            None | Some(
+                Mark::Equals | Mark::Plus | Mark::Minus | Mark::Times | Mark::Break | Mark::Column | Mark::Begin(_)
+            )
+        );
+        if is_empty && void {
+            self.tokens.pop();
+            self.space(false);
+        } else {
+            self.push(Mark::CloseGroup, from);
+        }
+    }
+
+    fn command(&mut self, from: usize) -> Result<(), Placed> {
+        let letters = self.source[self.at..]
+            .iter()
+            .take_while(|c| c.is_ascii_alphabetic())
+            .count();
+        // A command is a run of letters or one other character.
+        self.at = (self.at + letters.max(1)).min(self.source.len());
+        let name: String = self.source[from + 1..self.at].iter().collect();
+        if let Some(called) = function(&name) {
+            self.push(Mark::Function(called), from);
+            return Ok(());
+        }
+        let mark = match name.as_str() {
+            "frac" | "dfrac" | "tfrac" | "cfrac" => Mark::Fraction,
+            "sqrt" => Mark::Root,
+            "dot" => Mark::Dots(1),
+            "ddot" => Mark::Dots(2),
+            "dddot" => Mark::Dots(3),
+            "ddddot" => Mark::Dots(4),
+            "partial" => Mark::Partial,
+            "prime" => Mark::Prime,
+            "cdot" | "times" | "ast" => Mark::Times,
+            "{" | "lbrace" => Mark::Open('{'),
+            "}" | "rbrace" => Mark::Close('}'),
+            "lbrack" => Mark::Open('['),
+            "rbrack" => Mark::Close(']'),
+            "vert" | "lvert" | "rvert" | "mid" => Mark::Bar,
+            "pi" => Mark::Pi,
+            "phi" | "varphi" => Mark::Greek("phi"),
+            "epsilon" | "varepsilon" => Mark::Greek("epsilon"),
+            "vartheta" => Mark::Greek("theta"),
+            "varrho" => Mark::Greek("rho"),
+            "[" => Mark::Begin("\\]".to_owned()),
+            "(" => Mark::Begin("\\)".to_owned()),
+            "]" | ")" => Mark::End(format!("\\{name}")),
+            "\\" | "newline" | "cr" => return self.line_end(from),
+            "begin" | "end" => return self.environment(&name, from),
+            "mathrm" | "text" | "operatorname" | "mathit" | "textrm" | "textit" | "mathop" => {
+                return self.word(&name, from);
+            }
+            "tag" | "label" | "hspace" | "vspace" => {
+                if self.peek() == Some('*') {
+                    self.at += 1;
+                }
+                self.raw_group(&name, from)?;
+                self.space(false);
+                return Ok(());
+            }
+            _ if is_size(&name) => {
+                self.skip_space();
+                // A full stop stands for the missing bracket of a pair.
+                if self.peek() == Some('.') {
+                    self.at += 1;
+                }
+                return Ok(());
+            }
+            _ if is_space(&name) => {
+                self.space(true);
+                return Ok(());
+            }
+            _ if is_ignored(&name) => return Ok(()),
+            _ => match GREEK.iter().find(|letter| **letter == name) {
+                Some(letter) => Mark::Greek(letter),
+                None => {
+                    let fault = ReadFault::Command {
+                        instead: advice(&name),
+                        command: name,
+                    };
+                    return Err((fault, from + 1));
+                }
+            },
+        };
+        self.push(mark, from);
+        Ok(())
+    }
+
+    /// The end of a line may have a star and a distance in square brackets.
+    fn line_end(&mut self, from: usize) -> Result<(), Placed> {
+        self.push(Mark::Break, from);
+        if self.peek() == Some('*') {
+            self.at += 1;
+        }
+        if self.peek() == Some('[') {
+            self.distance();
+        }
+        Ok(())
+    }
+
+    /// Skips an option in square brackets if it is one: a bracket of a formula is left alone.
+    fn distance(&mut self) {
+        let inside = self.source[self.at + 1..].iter().take(12);
+        let length = inside
+            .take_while(|c| c.is_ascii_alphanumeric() || matches!(c, '.' | '-'))
+            .count();
+        let text: String = self.source[self.at + 1..self.at + 1 + length].iter().collect();
+        let unit = ["pt", "em", "ex", "mm", "cm", "in", "mu", "t", "b", "c"];
+        let closed = self.source.get(self.at + 1 + length) == Some(&']');
+        if closed && unit.iter().any(|unit| text.ends_with(unit)) {
+            self.at += length + 2;
+        }
+    }
+
+    fn environment(&mut self, command: &str, from: usize) -> Result<(), Placed> {
+        let name = self.raw_group(command, from)?;
+        let plain = name.trim_end_matches('*');
+        if !is_environment(plain) {
+            return Err((ReadFault::Environment { name }, from + 1));
+        }
+        if command == "end" {
+            self.push(Mark::End(name), from);
+            return Ok(());
+        }
+        if matches!(plain, "alignat" | "alignedat" | "xalignat") {
+            self.raw_group(command, from)?;
+        }
+        if self.peek() == Some('[') {
+            self.distance();
+        }
+        self.push(Mark::Begin(name), from);
+        Ok(())
+    }
+
+    /// Upright letters are one word; the name of a function means that function.
+    fn word(&mut self, command: &str, from: usize) -> Result<(), Placed> {
+        if self.peek() == Some('*') {
+            self.at += 1;
+        }
+        let text = self.raw_group(command, from)?;
+        let text = text.trim();
+        if text.is_empty() {
+            self.space(false);
+            return Ok(());
+        }
+        let mark = function(text).map_or_else(|| Mark::Word(text.to_owned()), Mark::Function);
+        self.push(mark, from);
+        Ok(())
+    }
+
+    /// What stands in braces after a command, as it is, or the one character that stands for it.
+    fn raw_group(&mut self, command: &str, from: usize) -> Result<String, Placed> {
+        self.skip_space();
+        let ends = |place| {
+            let fault = ReadFault::Braces {
+                command: command.to_owned(),
+            };
+            (fault, place)
+        };
+        let first = self.peek().ok_or_else(|| ends(from + 1))?;
+        self.at += 1;
+        if first != '{' {
+            return if first.is_alphanumeric() {
+                Ok(first.to_string())
+            } else {
+                Err(ends(from + 1))
+            };
+        }
+        let (inside, mut depth) = (self.at, 1_usize);
+        while let Some(c) = self.peek() {
+            match c {
+                '{' => depth += 1,
+                '}' => depth -= 1,
+                _ => {}
+            }
+            self.at += 1;
+            if depth == 0 {
+                return Ok(self.source[inside..self.at - 1].iter().collect());
+            }
+        }
+        Err(ends(from + 1))
+    }
+}
