@@ -72,8 +72,21 @@ pub(super) fn function(command: &str) -> Option<Called> {
 /// Whether an environment only arranges formulas.
 pub(super) fn is_environment(name: &str) -> bool {
     const KNOWN: [&str; 15] = [
-        "equation", "align", "aligned", "alignat", "alignedat", "xalignat", "gather", "gathered", "split",
-        "multline", "eqnarray", "flalign", "displaymath", "math", "subequations",
+        "equation",
+        "align",
+        "aligned",
+        "alignat",
+        "alignedat",
+        "xalignat",
+        "gather",
+        "gathered",
+        "split",
+        "multline",
+        "eqnarray",
+        "flalign",
+        "displaymath",
+        "math",
+        "subequations",
     ];
     KNOWN.contains(&name)
 }
@@ -91,8 +104,21 @@ pub(super) fn is_size(command: &str) -> bool {
 pub(super) fn is_space(command: &str) -> bool {
     matches!(
         command,
-        "," | ";" | ":" | ">" | " " | "\n" | "\t" | "\r" | "quad" | "qquad" | "thinspace" | "medspace" | "thickspace"
-            | "enspace" | "enskip" | "space"
+        "," | ";"
+            | ":"
+            | ">"
+            | " "
+            | "\n"
+            | "\t"
+            | "\r"
+            | "quad"
+            | "qquad"
+            | "thinspace"
+            | "medspace"
+            | "thickspace"
+            | "enspace"
+            | "enskip"
+            | "space"
     )
 }
 
@@ -148,7 +174,11 @@ pub(super) fn advice(command: &str) -> &'static str {
         "div" => "write a quotient with `\\frac{a}{b}`",
         "imath" | "jmath" | "Re" | "Im" => "every quantity is real: write the real part out",
         "binom" | "choose" | "over" | "substack" | "stackrel" | "overset" | "underset" | "underbrace"
-        | "overbrace" | "cancel" | "color" | "boxed" | "mbox" => "leave the command out and write the formula alone",
-        _ => "leave it out, or write the part with `\\frac`, `\\sqrt`, `\\dot`, `\\sin`, powers, indices and Greek letters",
+        | "overbrace" | "cancel" | "color" | "boxed" | "mbox" => {
+            "leave the command out and write the formula alone"
+        }
+        _ => {
+            "leave it out, or write the part with `\\frac`, `\\sqrt`, `\\dot`, `\\sin`, powers, indices and Greek letters"
+        }
     }
 }

@@ -7,7 +7,8 @@ use super::read::{ReadError, ReadFault};
 use crate::expr::{Expr, pi};
 use crate::number::Rational;
 
-const CLEAR_ARGUMENT: &str = "put the argument in brackets, as in `\\sin\\left(\\omega t\\right)`";
+const CLEAR_ARGUMENT: &str =
+    "put the argument in brackets, as in `\\sin\\left(\\omega t\\right)`, or end it with `\\,`";
 
 impl Reader<'_> {
     /// A factor with its power.
@@ -158,7 +159,7 @@ impl Reader<'_> {
         if let Some(rate) = self.rate(from, above, below)? {
             return Ok(rate);
         }
-        let mut factors = vec![self.within(above)?.whole()];
+        let mut factors = self.within(above)?.each();
         factors.extend(self.within(below)?.below());
         Ok(Expr::product_of(factors))
     }
@@ -168,7 +169,12 @@ impl Reader<'_> {
         let mut degree = Rational::from(2);
         if self.peek() == Some(&Mark::Open('[')) {
             let from = self.at;
-            degree = self.bracket()?.whole().as_number().cloned().unwrap_or(Rational::ZERO);
+            degree = self
+                .bracket()?
+                .whole()
+                .as_number()
+                .cloned()
+                .unwrap_or(Rational::ZERO);
             if !degree.is_integer() || !degree.is_positive() {
                 let fault = ReadFault::Latex {
                     expected: "a whole number as the degree of the root",
@@ -179,10 +185,11 @@ impl Reader<'_> {
         }
         let range = self.argument("what stands below the root")?;
         if self.is_lone_digit(range) {
-            return Err(self.unclear(
-                "it is not clear which digits belong to the root",
-                "put them in braces: `\\sqrt{12}`",
-            ));
+            let fault = ReadFault::Unclear {
+                what: "it is not clear which digits belong to the root",
+                instead: "put them in braces: `\\sqrt{12}`",
+            };
+            return Err(self.error_at(range.0, fault));
         }
         let exponent = Rational::ONE.divided_by(&degree);
         let exponent = exponent.expect("invariant: the degree is positive");

@@ -1,5 +1,7 @@
 //! What arranges formulas on a page and is no part of them: environments, columns, broken lines.
 
+use std::collections::VecDeque;
+
 use super::latex_token::{Mark, Placed, Token};
 use super::read::ReadFault;
 
@@ -27,12 +29,12 @@ fn ends_sentence(mark: &Mark) -> bool {
 
 /// Takes away the marks of formulas and environments around the whole.
 fn without_environments(mut tokens: Vec<Token>, end: usize) -> Result<Vec<Token>, Placed> {
-    let mut open: Vec<Token> = Vec::new();
     let opening = tokens
         .iter()
         .take_while(|token| matches!(token.mark, Mark::Begin(_)))
         .count();
-    open.extend(tokens.drain(..opening));
+    // The end of the outermost comes last.
+    let mut open: VecDeque<Token> = tokens.drain(..opening).collect();
     loop {
         let ending = tokens
             .iter()
@@ -49,18 +51,24 @@ fn without_environments(mut tokens: Vec<Token>, end: usize) -> Result<Vec<Token>
         else {
             break;
         };
-        match open.pop() {
+        match open.pop_front() {
             Some(Token {
                 mark: Mark::Begin(begun),
                 ..
             }) if begun == name => {}
-            _ => return Err((latex("the beginning of it before this end", Some(&name)), place)),
+            _ => {
+                let begin = tokens.iter().find(|token| matches!(token.mark, Mark::Begin(_)));
+                return Err(match begin {
+                    Some(token) => (between(&name), token.place),
+                    None => (latex("the beginning of it before this end", Some(&name)), place),
+                });
+            }
         }
     }
     if let Some(Token {
         mark: Mark::Begin(begun),
         ..
-    }) = open.pop()
+    }) = open.pop_front()
     {
         // What is not closed at the end may be closed in the middle.
         let stray = tokens.iter().find(|token| matches!(token.mark, Mark::End(_)));
@@ -85,7 +93,9 @@ fn between(name: &str) -> ReadFault {
             instead: "give one formula or one environment at a time, without words between",
         }
     } else {
-        ReadFault::Environment { name: name.to_owned() }
+        ReadFault::Environment {
+            name: name.to_owned(),
+        }
     }
 }
 
@@ -158,7 +168,9 @@ fn without_breaks(tokens: Vec<Token>) -> Result<Vec<Token>, Placed> {
             Some(Mark::Break) if depth > 0 => continue,
             Some(Mark::Break) | None => {
                 let is_last = token.is_none();
-                let first = line.first().map(|token: &Token| (token.mark.clone(), token.place));
+                let first = line
+                    .first()
+                    .map(|token: &Token| (token.mark.clone(), token.place));
                 if let Some((first, place)) = first {
                     let before = !kept.is_empty();
                     if before && goes_on(&first, line_equals, formula_equals, place)? {

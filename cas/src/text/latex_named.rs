@@ -101,7 +101,9 @@ impl Reader<'_> {
             if length == 1 {
                 // A slip in a word is told apart from letters that are factors.
                 let slip = matches!(&unknown, Some(ReadFault::Undeclared { nearest: Some(_), .. }));
-                let fault = unknown.filter(|_| slip).unwrap_or_else(|| self.names.undeclared(&whole));
+                let fault = unknown
+                    .filter(|_| slip)
+                    .unwrap_or_else(|| self.names.undeclared(&whole));
                 return Err(self.error_at(from, fault));
             }
         }
@@ -135,10 +137,11 @@ impl Reader<'_> {
             let range = self.argument("a power")?;
             if self.tokens[range.0].mark != Mark::Prime {
                 if self.is_lone_digit(range) {
-                    return Err(self.unclear(
-                        "it is not clear which digits belong to the power",
-                        "put the power in braces: `e^{12}`",
-                    ));
+                    let fault = ReadFault::Unclear {
+                        what: "it is not clear which digits belong to the power",
+                        instead: "put the power in braces: `e^{12}`",
+                    };
+                    return Err(self.error_at(range.0, fault));
                 }
                 let exponent = self.within(range)?.whole();
                 self.no_second_power()?;
@@ -208,13 +211,17 @@ impl Reader<'_> {
         let (from, end) = (self.at, self.end);
         (self.at, self.end) = (from + 1, self.tokens[from].partner);
         let upright_e = matches!(self.peek(), Some(Mark::Word(word)) if word == "e");
-        let found = if upright_e { None } else { self.whole_name()? };
+        let found = match self.peek() {
+            _ if upright_e => None,
+            Some(Mark::Dots(_)) => Some(self.dotted()?).filter(|_| self.at == self.end),
+            _ => self.whole_name()?.map(|spelling| (spelling, 0)),
+        };
         let after = self.end + 1;
         self.end = end;
         match found {
-            Some(spelling) => {
+            Some((spelling, dots)) => {
                 self.at = after;
-                self.with_around(from, &spelling, 0).map(Some)
+                self.with_around(from, &spelling, dots).map(Some)
             }
             None => {
                 self.at = from;
@@ -251,7 +258,9 @@ impl Reader<'_> {
                 Some(Mark::Above) => {
                     self.advance();
                     let range = self.argument("a power")?;
-                    let primes = self.tokens[range.0..range.1].iter().filter(|t| t.mark == Mark::Prime);
+                    let primes = self.tokens[range.0..range.1]
+                        .iter()
+                        .filter(|t| t.mark == Mark::Prime);
                     let primes = u32::try_from(primes.count()).unwrap_or(u32::MAX);
                     if primes > 0 && usize::try_from(primes).is_ok_and(|primes| primes == range.1 - range.0) {
                         around.primes = around.primes.saturating_add(primes);
@@ -347,7 +356,10 @@ impl Reader<'_> {
         let around = self.around(stem.len() > 1)?;
         let mut spelling = stem.to_vec();
         spelling.extend(around.index);
-        let found = self.names.find(&spelling).map_err(|fault| self.error_at(from, fault))?;
+        let found = self
+            .names
+            .find(&spelling)
+            .map_err(|fault| self.error_at(from, fault))?;
         let Some(name) = found else {
             return Err(self.error_at(from, self.names.undeclared(&spelling)));
         };
@@ -467,7 +479,12 @@ impl Reader<'_> {
     }
 
     /// The derivative by time that a fraction of differentials is, such as `\frac{d^2 x}{dt^2}`.
-    pub(super) fn rate(&mut self, from: usize, above: Range, below: Range) -> Result<Option<Expr>, ReadError> {
+    pub(super) fn rate(
+        &mut self,
+        from: usize,
+        above: Range,
+        below: Range,
+    ) -> Result<Option<Expr>, ReadError> {
         let partial = |range: Range| self.tokens[range.0].mark == Mark::Partial;
         if partial(above) || partial(below) {
             return Err(self.error_at(from, ReadFault::Derivative));
@@ -502,12 +519,19 @@ impl Reader<'_> {
         let named = if begins { Some(self.named()?) } else { None };
         let fills = self.at == self.end;
         (self.at, self.end) = outer;
-        let symbol = named.filter(|_| fills && order.is_some()).and_then(|named| named.value.as_symbol());
-        let (Some(symbol), Some(order)) = (symbol, order.filter(|order| Rational::from(i64::from(*order)) == above_order))
-        else {
+        let symbol = named
+            .filter(|_| fills && order.is_some())
+            .and_then(|named| named.value.as_symbol());
+        let (Some(symbol), Some(order)) = (
+            symbol,
+            order.filter(|order| Rational::from(i64::from(*order)) == above_order),
+        ) else {
             return Err(self.error_at(from, ReadFault::Derivative));
         };
-        let primes = symbol.primes().checked_add(order).ok_or_else(|| self.too_many_primes(from))?;
+        let primes = symbol
+            .primes()
+            .checked_add(order)
+            .ok_or_else(|| self.too_many_primes(from))?;
         Ok(Some(symbol.with_primes(primes).into()))
     }
 

@@ -85,6 +85,13 @@ impl Factors {
         }
     }
 
+    pub(super) fn each(self) -> Vec<Expr> {
+        match self {
+            Self::One(expr) => vec![expr],
+            Self::Several(factors) => factors,
+        }
+    }
+
     pub(super) fn below(self) -> Vec<Expr> {
         match self {
             Self::One(expr) => vec![inverse(expr)],
@@ -301,7 +308,12 @@ impl<'a> Reader<'a> {
                 Some(Mark::Fraction) => needed += 2,
                 Some(Mark::Dots(_)) => needed += 1,
                 Some(
-                    Mark::Letter(_) | Mark::Digit(_) | Mark::Greek(_) | Mark::Word(_) | Mark::Pi | Mark::Prime,
+                    Mark::Letter(_)
+                    | Mark::Digit(_)
+                    | Mark::Greek(_)
+                    | Mark::Word(_)
+                    | Mark::Pi
+                    | Mark::Prime,
                 ) => {}
                 _ => return Err(self.expected(expected)),
             }
@@ -318,10 +330,11 @@ impl<'a> Reader<'a> {
     pub(super) fn exponent(&mut self, range: (usize, usize)) -> Result<Rational, ReadError> {
         let from = range.0;
         if self.is_lone_digit(range) {
-            return Err(self.error(ReadFault::Unclear {
+            let fault = ReadFault::Unclear {
                 what: "it is not clear which digits belong to the power",
                 instead: "put the power in braces: `x^{12}`",
-            }));
+            };
+            return Err(self.error_at(from, fault));
         }
         let value = self.within(range)?.whole();
         value.as_number().cloned().ok_or_else(|| {

@@ -205,7 +205,13 @@ impl Lexer {
         let void = matches!(
             before,
             None | Some(
-                Mark::Equals | Mark::Plus | Mark::Minus | Mark::Times | Mark::Break | Mark::Column | Mark::Begin(_)
+                Mark::Equals
+                    | Mark::Plus
+                    | Mark::Minus
+                    | Mark::Times
+                    | Mark::Break
+                    | Mark::Column
+                    | Mark::Begin(_)
             )
         );
         if is_empty && void {

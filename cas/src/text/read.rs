@@ -127,7 +127,10 @@ pub enum ReadFault {
 }
 
 fn found_words(found: Option<&str>) -> String {
-    found.map_or_else(|| "the text ends".to_owned(), |found| format!("`{found}` was found"))
+    found.map_or_else(
+        || "the text ends".to_owned(),
+        |found| format!("`{found}` was found"),
+    )
 }
 
 impl ReadError {
