@@ -264,10 +264,11 @@ fn symbol_latex(symbol: Symbol) -> String {
     let (stem, index) = name
         .split_once('_')
         .map_or((name, None), |(stem, index)| (stem, Some(index)));
-    let stem = dots(&letters(stem), symbol.primes().into());
+    let dotted = dots(&letters(stem), symbol.primes().into());
     match index.map(index_latex).filter(|index| !index.is_empty()) {
-        Some(index) => indexed(&stem, &index),
-        None => stem,
+        Some(index) if symbol.primes() == 0 => indexed(stem, &index),
+        Some(index) => format!("{dotted}_{{{index}}}"),
+        None => dotted,
     }
 }
 
@@ -277,16 +278,17 @@ pub fn latex_name(name: &str) -> String {
     let (stem, index) = name.split_once('_').unwrap_or((name, ""));
     match index_latex(index) {
         index if index.is_empty() => letters(stem),
-        index => indexed(&letters(stem), &index),
+        index => indexed(stem, &index),
     }
 }
 
-/// A stem with its index; a stem that ends with an index of its own is held together.
+/// A stem with its index; a stem that has an index of its own is held together.
 fn indexed(stem: &str, index: &str) -> String {
-    if stem.ends_with('}') && stem.contains("_{") && !stem.starts_with("\\d") && !stem.starts_with('{') {
-        format!("{{{stem}}}_{{{index}}}")
+    let letters = letters(stem);
+    if letters.contains("_{") {
+        format!("{{{letters}}}_{{{index}}}")
     } else {
-        format!("{stem}_{{{index}}}")
+        format!("{letters}_{{{index}}}")
     }
 }
 

@@ -91,6 +91,25 @@ pub(super) fn is_environment(name: &str) -> bool {
     KNOWN.contains(&name)
 }
 
+/// Whether a word joins formulas and names nothing.
+pub(super) fn is_conjunction(word: &str) -> bool {
+    matches!(
+        word,
+        "and"
+            | "or"
+            | "if"
+            | "for"
+            | "with"
+            | "where"
+            | "when"
+            | "since"
+            | "because"
+            | "so"
+            | "hence"
+            | "thus"
+    )
+}
+
 /// Whether a command sets the size of the bracket that follows.
 pub(super) fn is_size(command: &str) -> bool {
     if matches!(command, "left" | "right") {

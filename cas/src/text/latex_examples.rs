@@ -207,6 +207,8 @@ fn rotors_tops_and_others() {
             (r"k\,x\! % the spring", "k*x"),
             (r"\frac{a}{bc}/d", "a/(b*c)/d"),
             (r"(ab)(c)d\cdot2^{3}", "a*b*c*d*8"),
+            (r"v_{\text{abs}} - v_\mathrm{so}", "v_abs - v_so"),
+            (r"\frac{F}{dt}", "F/(d*t)"),
             (r"φ + θ'", "φ + θ'"),
         ],
     );
@@ -286,6 +288,7 @@ fn equations_are_split_into_lines_and_sides() {
         "a = b \\\\ -c = d \\\\ - e",
         &[(false, &["a", "b"]), (false, &["-c", "d - e"])],
     );
+    check_lines("a = \\\\ b - \\\\ &\\quad c", &[(false, &["a", "b - c"])]);
     check_lines("x \\\\ y \\\\", &[(false, &["x"]), (false, &["y"])]);
     assert_eq!(lines("a = b \\\\ c = d")[1].place, 10);
 }

@@ -218,7 +218,7 @@ impl Reader<'_> {
         }
         let argument = match self.peek() {
             Some(Mark::Open(_)) => self.enclosed(|reader| reader.bracket())?,
-            Some(Mark::OpenGroup) => self.enclosed(|reader| {
+            Some(Mark::OpenGroup) if !self.is_indexed_group() => self.enclosed(|reader| {
                 let range = reader.argument("an opening brace")?;
                 reader.within(range)
             })?,
@@ -226,6 +226,12 @@ impl Reader<'_> {
         };
         let value = called.of(argument);
         Ok(power.map_or(value, |power| value.power(power)))
+    }
+
+    /// Whether an index stands behind the braces that begin here, so that they hold a stem.
+    fn is_indexed_group(&self) -> bool {
+        let behind = self.tokens.get(self.tokens[self.at].partner + 1);
+        behind.is_some_and(|token| token.mark == Mark::Below)
     }
 
     /// An argument in brackets, which must not have a power.
@@ -257,9 +263,15 @@ impl Reader<'_> {
                     self.advance();
                     factors.push(pi());
                 }
-                Mark::Letter(_) | Mark::Word(_) | Mark::Greek(_) | Mark::Dots(_) => {
+                Mark::Letter(_) | Mark::Word(_) | Mark::Greek(_) | Mark::Dots(_) | Mark::OpenGroup
+                    if token.mark != Mark::OpenGroup || (factors.is_empty() && self.is_indexed_group()) =>
+                {
                     let from = self.at;
-                    let named = self.named()?;
+                    let named = match self.peek() {
+                        Some(Mark::OpenGroup) => self.braced_name()?,
+                        _ => Some(self.named()?),
+                    };
+                    let Some(named) = named else { break };
                     if named.is_rate && has_name {
                         self.at = from;
                         break;

@@ -173,7 +173,8 @@ fn without_breaks(tokens: Vec<Token>) -> Result<Vec<Token>, Placed> {
                     .map(|token: &Token| (token.mark.clone(), token.place));
                 if let Some((first, place)) = first {
                     let before = !kept.is_empty();
-                    if before && goes_on(&first, line_equals, formula_equals, place)? {
+                    let unfinished = kept.len() > 1 && is_operator(&kept[kept.len() - 2].mark);
+                    if before && (unfinished || goes_on(&first, line_equals, formula_equals, place)?) {
                         kept.pop();
                         formula_equals |= line_equals;
                     } else {

@@ -96,14 +96,14 @@ impl Reader<'_> {
                 return self.with_around(from, &spelling, 0);
             }
             if length == run.chars().count() {
-                unknown = Some(self.names.undeclared(&whole));
+                unknown = Some(whole.clone());
             }
             if length == 1 {
                 // A slip in a word is told apart from letters that are factors.
-                let slip = matches!(&unknown, Some(ReadFault::Undeclared { nearest: Some(_), .. }));
-                let fault = unknown
-                    .filter(|_| slip)
-                    .unwrap_or_else(|| self.names.undeclared(&whole));
+                let in_word = unknown.map(|word| self.names.undeclared(&word));
+                let slip =
+                    in_word.filter(|fault| matches!(fault, ReadFault::Undeclared { nearest: Some(_), .. }));
+                let fault = slip.unwrap_or_else(|| self.names.undeclared(&whole));
                 return Err(self.error_at(from, fault));
             }
         }
@@ -493,7 +493,13 @@ impl Reader<'_> {
             return Ok(None);
         };
         if !self.is_differential(above.0) {
-            return Ok(None);
+            // `\frac{m\,dv}{dt}` is no quotient of products, `\frac{F}{dt}` is one.
+            let inside = (above.0..above.1).any(|at| self.is_differential(at));
+            return if inside && !self.names.has_symbol("d") {
+                Err(self.error_at(from, ReadFault::Derivative))
+            } else {
+                Ok(None)
+            };
         }
         if !upright && self.names.has_symbol("d") {
             return Err(self.error_at(

@@ -21,7 +21,7 @@ const MOST_WITHOUT_BRACES: usize = 1_000;
 /// `q_1_2`, `\varphi` and `\phi` are `phi`. Where names are declared, letters that run together are the
 /// longest declared name; with an open scope each letter is one, and upright letters are one name.
 /// Dots and primes are the primes of the symbol: `\ddot{x}` and `x''` are `x''`, and so is
-/// `\frac{d^2 x}{dt^2}`. `e^{...}` is the exponential function unless `e` is declared.
+/// `\frac{d^2 x}{dt^2}`; `x^{(3)}` is `x'''`. `e^{...}` is the exponential function unless `e` is declared.
 /// A declared function takes the bracket behind it as its arguments; behind any other name a bracket
 /// is a factor.
 ///
@@ -29,7 +29,7 @@ const MOST_WITHOUT_BRACES: usize = 1_000;
 /// `\sin`, `\ln` and the others take the product of the simple factors that follow: numbers, names,
 /// and at the beginning a fraction or root. The product ends before a function, a sign, a spacing
 /// command such as `\,`, a multiplication sign, and before a factor with dots or primes that follows a
-/// name: `\sin\omega t\cos\theta\,\dot\theta` and `\cos\theta\dot\theta` have the rate outside.
+/// name; braces hold the whole argument: `\sin\omega t\cos\theta\,\dot\theta` and `\cos\theta\dot\theta` have the rate outside.
 /// What people read in two ways is refused: `\sin\omega(t)`, `\sin\theta^2`, `\sin(x)^2`,
 /// `\sin^{-1}x`, `a/bc`.
 ///
@@ -259,6 +259,12 @@ impl<'a> Reader<'a> {
                     ));
                 }
                 mark if begins_factor(mark) => {
+                    if self.token().is_some_and(|token| token.far) {
+                        return Err(self.unclear(
+                            "a wide space stands between two factors, as between formulas",
+                            "write each formula on a line of its own, and `\\,` or `\\cdot` within a product",
+                        ));
+                    }
                     let opens = matches!(mark, Mark::Open(_));
                     let next = self.factor()?;
                     if behind_name && opens && is_lone(&next) {

@@ -132,6 +132,18 @@ fn what_has_no_meaning_is_refused_with_advice() {
             "write the derivative out",
         ),
         (
+            r"\frac{m\,dv}{dt}",
+            1,
+            "this derivative cannot be read",
+            "write the derivative out",
+        ),
+        (
+            r"x \operatorname{arctan} y",
+            3,
+            "the command `\\arctan` is not read",
+            "name the angle",
+        ),
+        (
             r"(a+b)'",
             6,
             "this derivative cannot be read",
@@ -150,7 +162,12 @@ fn what_has_no_meaning_is_refused_with_advice() {
             "the environment `pmatrix` is not read",
             "entry by entry",
         ),
-        (r"x \text{ for small } y", 3, "the character ` `", "letters"),
+        (
+            r"x \text{ for small } y",
+            3,
+            "words between formulas",
+            "leave the words out",
+        ),
         (r"a § b", 3, "the character `§` is not read", "without words"),
         (r"9,81", 2, "`,` was found", "one formula"),
         (r"1.2.3", 1, "`1.2.3` is no number", "write"),
@@ -296,6 +313,19 @@ fn equations_that_are_not_clear_are_refused() {
             13,
             "goes on with the one before",
             "on one line",
+        ),
+        ("a = b \\quad c = d", 13, "a wide space", "a line of its own"),
+        (
+            "a = b \\text{ and } c = d",
+            7,
+            "words between formulas",
+            "one formula on each line",
+        ),
+        (
+            "a = b \\quad \\text{and} \\quad c = d",
+            13,
+            "words between formulas",
+            "one formula on each line",
         ),
         ("a = b, c = d", 6, "but `,` was found", "one formula"),
         (

@@ -6,7 +6,17 @@ use super::{Arrangement, Scope, latex, read_latex, read_latex_equations};
 use crate::expr::{Expr, Function, Kind, Name, Symbol};
 use crate::number::Rational;
 
-const SYMBOLS: [&str; 8] = ["x", "m_t", "phi", "e", "rope", "phi1", "q_1_2", "omega_max"];
+const SYMBOLS: [&str; 9] = [
+    "x",
+    "m_t",
+    "phi",
+    "e",
+    "rope",
+    "phi1",
+    "q_1_2",
+    "delta1_2",
+    "omega_max",
+];
 
 fn scope() -> Scope {
     let name = |text: &str| Name::new(text).expect("a valid name");

@@ -1,8 +1,11 @@
 //! The tokens of LaTeX formulas: characters and commands with the places where they stand.
 
 use super::latex::GREEK;
-use super::latex_command::{Called, advice, function, is_environment, is_ignored, is_size, is_space};
+use super::latex_command::{
+    Called, advice, function, is_conjunction, is_environment, is_ignored, is_size, is_space,
+};
 use super::read::ReadFault;
+use crate::expr::{Name, NameError};
 
 /// What a token is.
 #[derive(Clone, Debug, PartialEq, Eq)]
@@ -74,6 +77,8 @@ pub(super) struct Token {
     pub(super) spaced: bool,
     /// Whether a spacing command stands before it.
     pub(super) apart: bool,
+    /// Whether a wide space stands before it, as between formulas.
+    pub(super) far: bool,
     /// For a brace, the index of its partner.
     pub(super) partner: usize,
 }
@@ -88,6 +93,7 @@ pub(super) fn tokens(source: &str) -> Result<Vec<Token>, Placed> {
         at: 0,
         spaced: false,
         apart: false,
+        far: false,
         in_dollars: None,
         tokens: Vec::new(),
     };
@@ -102,6 +108,7 @@ struct Lexer {
     at: usize,
     spaced: bool,
     apart: bool,
+    far: bool,
     in_dollars: Option<usize>,
     tokens: Vec<Token>,
 }
@@ -114,6 +121,7 @@ impl Lexer {
             length: self.at - from,
             spaced: std::mem::take(&mut self.spaced),
             apart: std::mem::take(&mut self.apart),
+            far: std::mem::take(&mut self.far),
             partner: 0,
         });
     }
@@ -280,6 +288,7 @@ impl Lexer {
             }
             _ if is_space(&name) => {
                 self.space(true);
+                self.far |= matches!(name.as_str(), "quad" | "qquad");
                 return Ok(());
             }
             _ if is_ignored(&name) => return Ok(()),
@@ -350,14 +359,44 @@ impl Lexer {
             self.at += 1;
         }
         let text = self.raw_group(command, from)?;
-        let text = text.trim();
-        if text.is_empty() {
+        let word = text.trim();
+        if word.is_empty() {
             self.space(false);
             return Ok(());
         }
-        let mark = function(text).map_or_else(|| Mark::Word(text.to_owned()), Mark::Function);
+        if self.in_index() {
+            self.push(Mark::Word(word.to_owned()), from);
+            return Ok(());
+        }
+        if word.len() < text.len() || is_conjunction(word) {
+            let fault = ReadFault::Unclear {
+                what: "there are words between formulas",
+                instead: "leave the words out and give one formula on each line",
+            };
+            return Err((fault, from + 1));
+        }
+        let reserved = matches!(Name::new(word), Err(NameError::Reserved { .. }));
+        let operator = command == "operatorname" && advice(word) != advice("");
+        if (reserved || operator) && function(word).is_none() && word != "pi" {
+            let fault = ReadFault::Command {
+                instead: advice(word),
+                command: word.to_owned(),
+            };
+            return Err((fault, from + 1));
+        }
+        let mark = function(word).map_or_else(|| Mark::Word(word.to_owned()), Mark::Function);
         self.push(mark, from);
         Ok(())
+    }
+
+    /// Whether an index begins here, where words name no functions.
+    fn in_index(&self) -> bool {
+        let mut before = self.tokens.iter().rev().map(|token| &token.mark);
+        match before.next() {
+            Some(Mark::Below) => true,
+            Some(Mark::OpenGroup) => before.next() == Some(&Mark::Below),
+            _ => false,
+        }
     }
 
     /// What stands in braces after a command, as it is, or the one character that stands for it.
