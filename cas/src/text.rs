@@ -5,14 +5,19 @@
 
 mod arrangement;
 mod latex;
+mod latex_around;
 mod latex_command;
 mod latex_equations;
 #[cfg(test)]
 mod latex_examples;
 mod latex_factor;
+mod latex_function;
 mod latex_layout;
+mod latex_lexer;
 mod latex_named;
 mod latex_names;
+mod latex_product;
+mod latex_rate;
 mod latex_read;
 #[cfg(test)]
 mod latex_refusals;

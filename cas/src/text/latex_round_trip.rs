@@ -6,7 +6,7 @@ use super::{Arrangement, Scope, latex, read_latex, read_latex_equations};
 use crate::expr::{Expr, Function, Kind, Name, Symbol};
 use crate::number::Rational;
 
-const SYMBOLS: [&str; 9] = [
+const SYMBOLS: [&str; 10] = [
     "x",
     "m_t",
     "phi",
@@ -15,6 +15,7 @@ const SYMBOLS: [&str; 9] = [
     "phi1",
     "q_1_2",
     "delta1_2",
+    "exp_1",
     "omega_max",
 ];
 
