@@ -1,9 +1,10 @@
-//! Expressions as text: plain notation and LaTeX.
+//! Expressions as text: plain notation and LaTeX, written and read.
 //!
 //! Writing never recurses on the depth of an expression: a stack of pieces that are still to be
 //! written takes its place.
 
 mod arrangement;
+mod fault;
 mod latex;
 mod latex_around;
 mod latex_command;
@@ -35,10 +36,11 @@ mod tests;
 mod width;
 
 pub use arrangement::Arrangement;
+pub use fault::{ReadError, ReadFault};
 pub use latex::{latex, latex_name};
 pub use latex_equations::{LatexLine, read_latex_equations};
 pub use latex_read::read_latex;
 pub use lines::{latex_equation, latex_lines, plain_equation};
 pub use plain::plain;
-pub use read::{ReadError, ReadFault, read};
+pub use read::read;
 pub use scope::Scope;

@@ -1,10 +1,10 @@
 //! What is set around a name in LaTeX: primes, indices, orders of derivation, powers, arguments.
 
+use super::fault::{ReadError, ReadFault};
 use super::latex_named::Named;
 use super::latex_names::Meaning;
 use super::latex_read::{Range, Reader};
 use super::latex_token::Mark;
-use super::read::{ReadError, ReadFault};
 use crate::expr::{Expr, Name, Symbol};
 
 /// What is set behind a name.

@@ -1,8 +1,8 @@
 //! Equations in LaTeX: lines with their sides.
 
+use super::fault::{ReadError, ReadFault};
 use super::latex_read::Reader;
 use super::latex_token::Mark;
-use super::read::{ReadError, ReadFault};
 use super::scope::Scope;
 use crate::expr::Expr;
 

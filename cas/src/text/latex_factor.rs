@@ -1,9 +1,9 @@
 //! Factors in LaTeX: numbers, brackets, fractions and roots, with their powers.
 
+use super::fault::{ReadError, ReadFault};
 use super::latex_product::{Factors, Read};
 use super::latex_read::Reader;
 use super::latex_token::Mark;
-use super::read::{ReadError, ReadFault};
 use crate::expr::{Expr, pi};
 use crate::number::Rational;
 

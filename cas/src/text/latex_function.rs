@@ -1,10 +1,10 @@
 //! Functions in LaTeX, with their powers and their arguments with and without brackets.
 
+use super::fault::{ReadError, ReadFault};
 use super::latex_command::Called;
 use super::latex_product::Factors;
 use super::latex_read::Reader;
 use super::latex_token::Mark;
-use super::read::{ReadError, ReadFault};
 use crate::expr::{Expr, pi};
 
 const CLEAR_ARGUMENT: &str =

@@ -2,8 +2,8 @@
 
 use std::collections::VecDeque;
 
+use super::fault::ReadFault;
 use super::latex_token::{Mark, Placed, Token};
-use super::read::ReadFault;
 
 /// The tokens of the formulas alone. What is left of the layout are the ends of lines that end a
 /// formula; braces know their partners.

@@ -1,9 +1,9 @@
 //! Taking a text in LaTeX apart: characters, commands, and the text that a command takes as it is.
 
+use super::fault::ReadFault;
 use super::latex::GREEK;
 use super::latex_command::{advice, function, is_conjunction, is_environment, is_ignored, is_size, is_space};
 use super::latex_token::{Mark, Placed, Token};
-use super::read::ReadFault;
 use crate::expr::{Name, NameError};
 
 /// Takes a text apart.

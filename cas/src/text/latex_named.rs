@@ -1,14 +1,14 @@
 //! Names in LaTeX: letters that run together, words, names under dots and in braces.
 
+use super::fault::{ReadError, ReadFault};
 use super::latex_command::advice;
 use super::latex_names::Spelling;
 use super::latex_read::Reader;
 use super::latex_token::Mark;
-use super::read::{ReadError, ReadFault};
 use crate::expr::{Expr, Function, Name, NameError};
 
-/// Names have no more characters than this.
-const MOST_LETTERS: usize = 64;
+/// A slip adds no more letters than these to a name.
+const LETTERS_TOO_MANY: usize = 3;
 
 /// A name with its power or arguments, as a factor.
 pub(super) struct Named {
@@ -107,7 +107,7 @@ impl Reader<'_> {
     fn run(&self, end: usize) -> String {
         let mut run = String::new();
         // A longer run cannot be one name.
-        let most = MOST_LETTERS + 1;
+        let most = self.names.longest() + LETTERS_TOO_MANY;
         for (place, token) in self.tokens[self.at..end].iter().take(most).enumerate() {
             match token.mark {
                 Mark::Letter(c) | Mark::Digit(c) if place == 0 || !token.spaced => run.push(c),

@@ -2,7 +2,7 @@
 
 use std::collections::BTreeMap;
 
-use super::read::ReadFault;
+use super::fault::ReadFault;
 use super::scope::{Scope, undeclared_text};
 use crate::expr::{Name, NameError};
 

@@ -1,8 +1,8 @@
 //! Products in LaTeX: factors side by side, with signs between them, and quotients on one line.
 
+use super::fault::ReadError;
 use super::latex_read::Reader;
 use super::latex_token::Mark;
-use super::read::ReadError;
 use crate::expr::{Expr, Kind};
 
 /// A factor as it was read: what is kept apart lets a division by it divide by each factor.

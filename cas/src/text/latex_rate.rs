@@ -1,8 +1,8 @@
 //! Derivatives by time that are written as fractions of differentials.
 
+use super::fault::{ReadError, ReadFault};
 use super::latex_read::{Range, Reader};
 use super::latex_token::Mark;
-use super::read::{ReadError, ReadFault};
 use crate::expr::Expr;
 use crate::number::Rational;
 

@@ -1,12 +1,12 @@
 //! Reading LaTeX: by descent over tokens, with a bound on nesting, and errors that point at the place.
 
+use super::fault::{DEEPEST, MOST_BYTES, ReadError, ReadFault};
 use super::latex_layout::without_layout;
 use super::latex_lexer::tokens;
 use super::latex_names::Names;
 use super::latex_product::Factors;
 use super::latex_token::{Mark, Token};
 use super::plain::plain;
-use super::read::{DEEPEST, MOST_BYTES, ReadError, ReadFault};
 use super::scope::Scope;
 use crate::expr::Expr;
 use crate::number::Rational;

@@ -1,7 +1,7 @@
 //! The tokens of LaTeX formulas, with the places where they stand.
 
+use super::fault::ReadFault;
 use super::latex_command::Called;
-use super::read::ReadFault;
 
 /// What a token is.
 #[derive(Clone, Debug, PartialEq, Eq)]

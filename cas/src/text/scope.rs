@@ -2,7 +2,7 @@
 
 use std::collections::{BTreeMap, BTreeSet};
 
-use super::read::ReadFault;
+use super::fault::ReadFault;
 use crate::expr::Name;
 
 /// The names that a text may use.
