@@ -142,6 +142,11 @@ impl ReadError {
             } => format!("did you mean `{nearest}`?"),
             ReadFault::Undeclared { nearest: None, .. } => "declare it first".to_owned(),
             ReadFault::Name(error) => error.hint().to_owned(),
+            ReadFault::Arguments { name, declared, .. } => {
+                let arguments: Vec<String> = (1..=*declared).map(|place| format!("x_{place}")).collect();
+                format!("write `{name}({})` with its arguments", arguments.join(", "))
+            }
+            ReadFault::Number { .. } => "write digits with one decimal point, for example 9.81".to_owned(),
             ReadFault::TooDeep | ReadFault::TooLong => {
                 "name parts of the expression and write them one by one".to_owned()
             }

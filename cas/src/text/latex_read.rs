@@ -43,7 +43,7 @@ const MOST_WITHOUT_BRACES: usize = 1_000;
 ///     read("1/2*m*l^2*theta'^2 - m*g*l*(1 - cos(theta))", &Scope::open())?
 /// );
 /// let error = read_latex(r"m l \sin^{-1} x", &Scope::open()).expect_err("two meanings");
-/// assert_eq!(error.place, 9);
+/// assert_eq!(error.place, 11);
 /// # Ok::<(), cas::text::ReadError>(())
 /// ```
 ///

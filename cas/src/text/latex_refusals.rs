@@ -257,7 +257,7 @@ fn names_that_are_not_declared_are_pointed_at() {
             "did you mean `rope`?",
         ),
         (r"x_1", 1, "`x_1` is not declared", "declare it first"),
-        (r"l U", 3, "`U` takes 1 arguments, not 0", "write"),
+        (r"l U", 3, "`U` takes 1 arguments, not 0", "U(x_1)"),
         (r"U(x,l)", 1, "`U` takes 1 arguments, not 2", "write"),
         (r"U^2(x)", 1, "a power stands between", "behind the arguments"),
         (
