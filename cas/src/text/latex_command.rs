@@ -181,6 +181,7 @@ pub(super) fn advice(command: &str) -> &'static str {
         "abs" | "Vert" | "lVert" | "rVert" | "|" | "norm" => {
             "the absolute value is not known: write `\\sqrt{x^2}`, or state each sign as a case of its own"
         }
+        "rm" | "it" | "bf" | "sf" | "cal" => "write a word in upright letters as `\\mathrm{word}`",
         "circ" | "degree" => "angles are in radians: write `\\frac{\\pi}{180}` times the number of degrees",
         "sgn" | "sign" => "state each sign as a case of its own",
         "le" | "leq" | "ge" | "geq" | "lt" | "gt" | "neq" | "ne" | "approx" | "equiv" | "sim" | "simeq"

@@ -276,8 +276,8 @@ fn equations_are_split_into_lines_and_sides() {
         &[(false, &["T", "1/2*m*x'^2 + 1/2*J*theta'^2"])],
     );
     check_lines(
-        r"\begin{aligned} L &= T - V \\ &= \tfrac{1}{2} m v^2 - mgh \end{aligned}",
-        &[(false, &["L", "T - V"]), (true, &["1/2*m*v^2 - m*g*h"])],
+        r"\begin{aligned} L_{1} {}& = T - V \\ &= \tfrac{1}{2} m v^2 - mgh \end{aligned}",
+        &[(false, &["L_1", "T - V"]), (true, &["1/2*m*v^2 - m*g*h"])],
     );
     check_lines(
         r"$$ x = \left( a \right. \\ \left. + b \right) c = y $$",

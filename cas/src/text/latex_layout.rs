@@ -113,6 +113,12 @@ fn without_columns(tokens: Vec<Token>) -> Result<Vec<Token>, Placed> {
     };
     for token in tokens {
         if token.mark == Mark::Column {
+            // An empty pair of braces sets the spacing of the operator in the next column.
+            if let [.., open, close] = kept.as_slice()
+                && (&open.mark, &close.mark) == (&Mark::OpenGroup, &Mark::CloseGroup)
+            {
+                kept.truncate(kept.len() - 2);
+            }
             let before = kept.last().is_none_or(|last| is_operator(&last.mark));
             // Of signs side by side the first counts.
             if waiting.is_none() {

@@ -243,6 +243,13 @@ impl<'a> Reader<'a> {
             };
             return Err(self.error_at(from, fault));
         }
+        if let Mark::Word(_) = self.tokens[from].mark {
+            let fault = ReadFault::Unclear {
+                what: "a word stands where a power would",
+                instead: "move the word into the index: `Q_{x,\\mathrm{drive}}`",
+            };
+            return Err(self.error_at(from, fault));
+        }
         let value = self.within(range)?.whole();
         value.as_number().cloned().ok_or_else(|| {
             let exponent = plain(value, &super::Arrangement::default());

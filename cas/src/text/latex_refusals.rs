@@ -149,6 +149,12 @@ fn what_has_no_meaning_is_refused_with_advice() {
             "this derivative cannot be read",
             "write the derivative out",
         ),
+        (
+            r"Q_x^{\mathrm{drive}}",
+            6,
+            "a word stands where a power would",
+            "index",
+        ),
         (r"x^n", 3, "the exponent `n` is not a number", "\\exp"),
         (
             r"2^{\theta+1}",
