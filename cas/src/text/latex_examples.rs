@@ -263,6 +263,7 @@ fn check_lines(source: &str, expected: &[(bool, &[&str])]) {
 
 #[test]
 fn equations_are_split_into_lines_and_sides() {
+    check_lines("a &= b &= c & + d", &[(false, &["a", "b", "c + d"])]);
     check_lines("m\\ddot x = F", &[(false, &["m*x''", "F"])]);
     check_lines(
         r"\begin{align*}

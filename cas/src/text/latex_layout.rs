@@ -102,8 +102,9 @@ fn between(name: &str) -> ReadFault {
 /// Takes away the signs of alignment, which stand at the beginning of a line or beside an operator.
 fn without_columns(tokens: Vec<Token>) -> Result<Vec<Token>, Placed> {
     let mut kept: Vec<Token> = Vec::with_capacity(tokens.len());
-    let (mut columns, mut equals) = (0, 0);
-    let mut waiting: Option<usize> = None;
+    // Whether the line has a sign of equality, and the column after it that begins with another sign.
+    let (mut equals, mut divided) = (false, None);
+    let mut waiting = None;
     let several = |place| {
         let fault = ReadFault::Unclear {
             what: "there are several formulas in one line",
@@ -121,28 +122,24 @@ fn without_columns(tokens: Vec<Token>) -> Result<Vec<Token>, Placed> {
             }
             let before = kept.last().is_none_or(|last| is_operator(&last.mark));
             // Of signs side by side the first counts.
-            if waiting.is_none() {
-                columns += 1;
-                waiting = (!before).then_some(token.place);
-            }
-            if columns > 1 && equals > 1 {
-                return Err(several(token.place));
+            if waiting.is_none() && !before {
+                waiting = Some(token.place);
             }
             continue;
         }
-        if let Some(place) = waiting.take()
-            && !is_operator(&token.mark)
-        {
-            return Err(several(place));
-        }
-        match token.mark {
-            Mark::Break => (columns, equals) = (0, 0),
-            Mark::Equals => {
-                equals += 1;
-                if columns > 1 && equals > 1 {
-                    return Err(several(token.place));
-                }
+        if let Some(place) = waiting.take() {
+            if !is_operator(&token.mark) {
+                return Err(several(place));
             }
+            if equals && token.mark != Mark::Equals {
+                divided = divided.or(Some(place));
+            }
+        }
+        match (&token.mark, divided) {
+            (Mark::Break, _) => (equals, divided) = (false, None),
+            // What may be a broken line is a second equation.
+            (Mark::Equals, Some(place)) => return Err(several(place)),
+            (Mark::Equals, None) => equals = true,
             _ => {}
         }
         kept.push(token);
@@ -153,7 +150,7 @@ fn without_columns(tokens: Vec<Token>) -> Result<Vec<Token>, Placed> {
 fn is_operator(mark: &Mark) -> bool {
     matches!(
         mark,
-        Mark::Equals | Mark::Plus | Mark::Minus | Mark::Times | Mark::Slash | Mark::Break | Mark::Open(_)
+        Mark::Equals | Mark::Plus | Mark::Minus | Mark::Times | Mark::Slash | Mark::Break
     )
 }
 

@@ -309,8 +309,20 @@ fn equations_that_are_not_clear_are_refused() {
             "a line of its own",
         ),
         (
+            "a = b & -c = d",
+            7,
+            "several formulas in one line",
+            "a line of its own",
+        ),
+        (
+            "a &= b & (c) &= d",
+            8,
+            "several formulas in one line",
+            "a line of its own",
+        ),
+        (
             "a &= b & -c &= d",
-            14,
+            8,
             "several formulas in one line",
             "a line of its own",
         ),
