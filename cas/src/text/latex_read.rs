@@ -31,9 +31,12 @@ const MOST_WITHOUT_BRACES: usize = 1_000;
 /// `\sin`, `\ln` and the others take the product of the simple factors that follow: numbers, names,
 /// and at the beginning a fraction or root. The product ends before a function, a sign, a spacing
 /// command such as `\,`, a multiplication sign, and before a factor with dots or primes that follows a
-/// name; braces hold the whole argument: `\sin\omega t\cos\theta\,\dot\theta` and `\cos\theta\dot\theta` have the rate outside.
+/// name: `\sin\omega t\cos\theta\,\dot\theta` and `\cos\theta\dot\theta` have the rate outside.
+/// Brackets and braces hold the whole argument. Hyperbolic functions, cotangent, secant and cosecant are
+/// written out with exponentials, sines and cosines.
+///
 /// What people read in two ways is refused: `\sin\omega(t)`, `\sin\theta^2`, `\sin(x)^2`,
-/// `\sin^{-1}x`, `a/bc`.
+/// `\sin^{-1}x`, `a/bc`, `x(t)` where `x` is no function, a `\quad` between two factors.
 ///
 /// ```
 /// use cas::text::{Scope, read, read_latex};
