@@ -140,16 +140,17 @@ fn a_reference_that_disagrees_fails_the_run() -> Result<()> {
 #[test]
 fn a_refuted_step_fails_the_run() -> Result<()> {
     let folder = folder("refuted")?;
-    // A stop that pushes along the rail does work, so the step that says it does none is refuted.
+    // Our own steps are proved, so the cell hands out a record in which somebody else's step is not.
     let sheet = notebook(&[
-        SLEDGE,
-        "sheet.normal(\"stop\", sledge, vector(1, 0, 0));",
-        "sheet.virtual_work()",
+        "let record = r#\"{\"steps\": [{\"key\": \"claimed.x\", \"verdict\": {\"kind\": \"Refuted\"}}]}\"#;\n\
+         println!(\"EVCXR_BEGIN_CONTENT application/vnd.gudgeon.record+json\");\n\
+         println!(\"{record}\");\n\
+         println!(\"EVCXR_END_CONTENT\");",
     ]);
     written(&folder, "wrong.ipynb", &sheet)?;
     let found = run(&["run", "wrong.ipynb"], &folder)?;
     ensure!(found.code == Some(1), "{}", found.said());
-    for part in ["3 of 3 run", "Refuted 1"] {
+    for part in ["1 of 1 run", "Refuted 1"] {
         ensure!(found.stdout.contains(part), "{}", found.said());
     }
     Ok(())
