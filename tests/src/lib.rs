@@ -4,4 +4,5 @@
 pub mod motion;
 pub mod program;
 pub mod published;
+pub mod race;
 pub mod repository;
