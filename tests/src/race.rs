@@ -6,6 +6,7 @@
 //! its own.
 
 mod case;
+mod forms;
 mod ours;
 mod peer;
 mod process;

@@ -6,10 +6,10 @@ use std::time::Instant;
 
 use anyhow::{Error, Result, bail};
 use cas::decide::compare;
-use cas::present::collected;
-use cas::{Effort, Expr, Kind, Symbol};
+use cas::{Effort, Expr, Symbol};
 
 use super::case::Case;
+use super::forms::Forms;
 use super::process::Measurement;
 use super::workload::Workload;
 
@@ -69,24 +69,24 @@ pub fn measure(task: Task) -> Result<Measurement> {
 
 /// The number of terms of all equations of motion in canonical form.
 fn terms_of_equations(workload: &Workload, effort: &Effort) -> Result<u64> {
-    let mut terms = 0;
-    for equation in workload.by_energy()? {
-        let others: Vec<Symbol> = equation
-            .symbols()
-            .into_iter()
-            .filter(|symbol| !workload.coordinates.contains(symbol))
-            .collect();
-        terms += monomials(collected(equation, &others, effort));
-    }
-    Ok(terms)
-}
-
-fn monomials(expr: Expr) -> u64 {
-    match expr.kind() {
-        Kind::Sum(terms) => terms.iter().map(|term| monomials(*term)).sum(),
-        Kind::Product(factors) => factors.iter().map(|factor| monomials(*factor)).product(),
-        _ => 1,
-    }
+    let (kinetic, potential) = (workload.kinetic_energy(), workload.potential_energy());
+    let mut basis = workload.positions();
+    basis.extend([kinetic, potential]);
+    let forms = Forms::new(&basis, effort)?;
+    let kinetic = forms.form(kinetic)?;
+    let lagrangian = forms.difference(&kinetic, &forms.form(potential)?)?;
+    // All equations are kept until the last is there, as whoever derives them would keep them.
+    let equation = |coordinate: &Symbol| {
+        let momentum = forms.derivative(&kinetic, coordinate.primed())?;
+        let rate = forms.total_derivative(&momentum, &workload.rates)?;
+        forms.difference(&rate, &forms.derivative(&lagrangian, *coordinate)?)
+    };
+    let equations = workload
+        .coordinates
+        .iter()
+        .map(equation)
+        .collect::<Result<Vec<_>>>()?;
+    Ok(equations.iter().map(|equation| forms.terms(equation)).sum())
 }
 
 /// Proves each pair of equations equal.
