@@ -131,6 +131,8 @@ impl Race {
     /// Ours, in a process of its own.
     fn ours(&self, task: Task) -> Result<Run> {
         let mut command = Command::new(std::env::current_exe()?);
+        // The last line of a failure is what the table shows: the message, not the end of a backtrace.
+        command.env("RUST_BACKTRACE", "0");
         Ok(Run::of(command.args(["--case", &task.to_string()]), self.limit))
     }
 
