@@ -172,7 +172,7 @@ fn print_growth(rows: &[(Option<Case>, Row)]) {
             .filter_map(|(who, points)| Some(format!("{who} n^{:.1}", growth(&points)?)))
             .collect();
         if !exponents.is_empty() {
-            println!("growth of {name}: {}", exponents.join(", "));
+            println!("growth of {name}: {}", exponents.join("; "));
         }
     }
 }
