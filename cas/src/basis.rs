@@ -9,6 +9,7 @@
 //! becomes a variable whose key has its arguments in canonical form. Two spellings of one argument
 //! therefore give one variable; an equality proved over such variables holds for what they stand for.
 
+mod recombine;
 mod resolve;
 
 use std::collections::{BTreeMap, BTreeSet, HashMap};

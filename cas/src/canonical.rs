@@ -47,7 +47,7 @@ impl<'m> Canonical<'m> {
     }
 
     /// The expressions as fractions; what they divide by is noted.
-    fn converted(&mut self, roots: &[Expr]) -> Result<Vec<Fraction>, Failure> {
+    pub(crate) fn converted(&mut self, roots: &[Expr]) -> Result<Vec<Fraction>, Failure> {
         let mut done: HashMap<Expr, Fraction> = HashMap::new();
         let mut powers = HashMap::new();
         for node in self.basis.nodes(roots) {

@@ -13,6 +13,7 @@ pub mod effort;
 mod evaluate;
 pub mod expr;
 mod fingerprint;
+pub mod form;
 mod fraction;
 pub mod matrix;
 pub mod number;

@@ -183,6 +183,36 @@ impl<'a> Ring<'a> {
         Ok(result)
     }
 
+    /// The sum of the partial derivatives by some variables, each times a polynomial.
+    pub(crate) fn derived<'p>(
+        &self,
+        polynomial: &Polynomial,
+        rates: impl Iterator<Item = (usize, &'p Polynomial)>,
+    ) -> Result<Polynomial, Limit> {
+        let mut result = Accumulator::new(self.words);
+        let mut product = vec![0; self.words];
+        for (place, rate) in rates {
+            self.meter.spend(polynomial.len() as u64)?;
+            for (monomial, coefficient) in polynomial.terms(self.words) {
+                let power = exponent(monomial, place);
+                if power == 0 {
+                    continue;
+                }
+                self.meter.spend(rate.len() as u64)?;
+                let scaled = coefficient * &Rational::from(i64::from(power));
+                for (other, factor) in rate.terms(self.words) {
+                    for (sum, (p, q)) in product.iter_mut().zip(monomial.iter().zip(other)) {
+                        *sum = p + q;
+                    }
+                    product[place / 8] -= 1 << shift(place);
+                    self.add_reduced(&mut result, &product, &scaled * factor)?;
+                }
+            }
+            self.meter.allow_terms(result.len())?;
+        }
+        self.finished(result)
+    }
+
     /// Adds a term whose monomial may need its relations applied.
     fn add_reduced(
         &self,
@@ -302,6 +332,19 @@ impl<'a> Ring<'a> {
             monomial[place / 8] -= u64::from(by) << shift(place);
         }
         polynomial
+    }
+
+    /// Which variables occur, by their places.
+    pub(crate) fn present(&self, polynomial: &Polynomial) -> Vec<bool> {
+        let mut bits = vec![0; self.words];
+        for (monomial, _) in polynomial.terms(self.words) {
+            for (all, word) in bits.iter_mut().zip(monomial) {
+                *all |= word;
+            }
+        }
+        (0..self.relations.len())
+            .map(|place| exponent(&bits, place) > 0)
+            .collect()
     }
 
     /// The terms: exponents of all variables, and the coefficient.

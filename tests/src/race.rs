@@ -6,7 +6,6 @@
 //! its own.
 
 mod case;
-mod forms;
 mod ours;
 mod peer;
 mod process;

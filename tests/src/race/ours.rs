@@ -6,10 +6,11 @@ use std::time::Instant;
 
 use anyhow::{Error, Result, bail};
 use cas::decide::compare;
-use cas::{Effort, Expr, Symbol};
+use cas::effort::Meter;
+use cas::form::Forms;
+use cas::{Effort, Expr};
 
 use super::case::Case;
-use super::forms::Forms;
 use super::process::Measurement;
 use super::workload::Workload;
 
@@ -70,23 +71,26 @@ pub fn measure(task: Task) -> Result<Measurement> {
 /// The number of terms of all equations of motion in canonical form.
 fn terms_of_equations(workload: &Workload, effort: &Effort) -> Result<u64> {
     let (kinetic, potential) = (workload.kinetic_energy(), workload.potential_energy());
-    let mut basis = workload.positions();
-    basis.extend([kinetic, potential]);
-    let forms = Forms::new(&basis, effort)?;
+    let coordinates = workload.coordinates.iter();
+    let rates = coordinates.flat_map(|coordinate| [1, 2].map(|primes| coordinate.with_primes(primes).into()));
+    let parts: Vec<Expr> = rates.chain([kinetic, potential]).collect();
+    let meter = Meter::new(effort);
+    let mut forms = Forms::new(&parts, &workload.positions(), &meter)?;
     let kinetic = forms.form(kinetic)?;
-    let lagrangian = forms.difference(&kinetic, &forms.form(potential)?)?;
+    let potential = forms.form(potential)?;
+    let lagrangian = forms.difference(&kinetic, &potential)?;
     // All equations are kept until the last is there, as whoever derives them would keep them.
-    let equation = |coordinate: &Symbol| {
+    let mut equations = Vec::new();
+    for coordinate in &workload.coordinates {
         let momentum = forms.derivative(&kinetic, coordinate.primed())?;
         let rate = forms.total_derivative(&momentum, &workload.rates)?;
-        forms.difference(&rate, &forms.derivative(&lagrangian, *coordinate)?)
-    };
-    let equations = workload
-        .coordinates
+        let slope = forms.derivative(&lagrangian, *coordinate)?;
+        equations.push(forms.difference(&rate, &slope)?);
+    }
+    Ok(equations
         .iter()
-        .map(equation)
-        .collect::<Result<Vec<_>>>()?;
-    Ok(equations.iter().map(|equation| forms.terms(equation)).sum())
+        .map(|equation| forms.terms(equation) as u64)
+        .sum())
 }
 
 /// Proves each pair of equations equal.
