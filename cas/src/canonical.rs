@@ -70,7 +70,10 @@ impl<'m> Canonical<'m> {
             }
             Kind::Product(factors) => {
                 let mut product = Fraction::whole(ring.constant(Rational::ONE));
-                for factor in factors {
+                // Single terms first: multiplying by one of them keeps a polynomial in order.
+                let single = |factor: &&Expr| done[*factor].numerator.len() == 1;
+                let (first, then): (Vec<&Expr>, Vec<&Expr>) = factors.iter().partition(single);
+                for factor in first.into_iter().chain(then) {
                     product = fraction::product(ring, &product, &done[factor])?;
                 }
                 Ok(product)

@@ -273,14 +273,17 @@ impl<'m> Forms<'m> {
 
     fn of_polynomial(&self, polynomial: &Polynomial, derivation: &Derivation) -> Result<Fraction, Limit> {
         let ring = &self.canonical.ring;
+        if let [(place, rate)] = derivation.as_slice() {
+            let slope = Fraction::whole(ring.slope(polynomial, *place)?);
+            return fraction::product(ring, &slope, rate);
+        }
         let (whole, broken): (Vec<_>, Vec<_>) = derivation
             .iter()
             .partition(|(_, rate)| rate.denominator.is_empty());
         let polynomials = whole.iter().map(|(place, rate)| (*place, &rate.numerator));
         let mut sum = Fraction::whole(ring.derived(polynomial, polynomials)?);
         for (place, rate) in broken {
-            let one = ring.constant(Rational::ONE);
-            let slope = Fraction::whole(ring.derived(polynomial, [(*place, &one)].into_iter())?);
+            let slope = Fraction::whole(ring.slope(polynomial, *place)?);
             sum = fraction::sum(ring, &[&sum, &fraction::product(ring, &slope, rate)?])?;
         }
         Ok(sum)

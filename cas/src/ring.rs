@@ -14,6 +14,8 @@
 //! compare as the lexicographic order does and a product of monomials is a sum of words. The highest
 //! bit of each byte stays free to notice an exponent that does not fit.
 
+use std::cmp::Ordering;
+
 mod accumulator;
 mod polynomial;
 #[cfg(test)]
@@ -104,14 +106,64 @@ impl<'a> Ring<'a> {
             [only] => return Ok((*only).clone()),
             _ => {}
         }
-        let mut result = Accumulator::new(self.words);
-        for part in parts {
-            self.meter.spend(part.len() as u64)?;
-            for (exponents, coefficient) in part.terms(self.words) {
-                result.add(exponents, coefficient.clone());
+        // Neighbours first, then sums of neighbours: every term is looked at a few times only.
+        let mut level: Vec<Polynomial> = Vec::with_capacity(parts.len().div_ceil(2));
+        for pair in parts.chunks(2) {
+            self.meter
+                .spend(pair.iter().map(|part| part.len() as u64).sum())?;
+            level.push(match pair {
+                [left, right] => self.merged(left, right),
+                _ => pair[0].clone(),
+            });
+        }
+        while level.len() > 1 {
+            let mut next = Vec::with_capacity(level.len().div_ceil(2));
+            for pair in level.chunks(2) {
+                self.meter
+                    .spend(pair.iter().map(|part| part.len() as u64).sum())?;
+                next.push(match pair {
+                    [left, right] => self.merged(left, right),
+                    _ => pair[0].clone(),
+                });
+            }
+            level = next;
+        }
+        let sum = level.pop().unwrap_or_default();
+        self.allowed(sum)
+    }
+
+    /// The sum of two polynomials: both are in order, so one walk along them suffices.
+    fn merged(&self, left: &Polynomial, right: &Polynomial) -> Polynomial {
+        let mut sum = Polynomial::with_capacity(left.len() + right.len(), self.words);
+        let (mut ours, mut theirs) = (
+            left.terms(self.words).peekable(),
+            right.terms(self.words).peekable(),
+        );
+        loop {
+            let order = match (ours.peek(), theirs.peek()) {
+                (Some((a, _)), Some((b, _))) => b.cmp(a),
+                (Some(_), None) => Ordering::Less,
+                (None, Some(_)) => Ordering::Greater,
+                (None, None) => return sum,
+            };
+            let own = if order.is_le() { ours.next() } else { None };
+            let other = if order.is_ge() { theirs.next() } else { None };
+            match (own, other) {
+                (Some((monomial, a)), Some((_, b))) => sum.push(monomial, a + b),
+                (Some((monomial, value)), None) | (None, Some((monomial, value))) => {
+                    sum.push(monomial, value.clone());
+                }
+                (None, None) => return sum,
             }
         }
-        self.finished(result)
+    }
+
+    fn allowed(&self, polynomial: Polynomial) -> Result<Polynomial, Limit> {
+        self.meter.allow_terms(polynomial.len())?;
+        for coefficient in &polynomial.coefficients {
+            self.meter.allow_bits(coefficient.bits())?;
+        }
+        Ok(polynomial)
     }
 
     /// The product, reduced.
@@ -121,6 +173,14 @@ impl<'a> Ring<'a> {
         }
         if let Some(value) = left.as_constant() {
             return self.scaled(right, &value);
+        }
+        let (short, long) = if left.len() < right.len() {
+            (left, right)
+        } else {
+            (right, left)
+        };
+        if let Some(product) = self.by_one_term(long, short)? {
+            return Ok(product);
         }
         let mut result = Accumulator::new(self.words);
         let mut monomial = vec![0; self.words];
@@ -135,6 +195,30 @@ impl<'a> Ring<'a> {
             self.meter.allow_terms(result.len())?;
         }
         self.finished(result)
+    }
+
+    /// The product with a polynomial of one term, where no relation applies: the order stays.
+    fn by_one_term(&self, polynomial: &Polynomial, single: &Polynomial) -> Result<Option<Polynomial>, Limit> {
+        let mut terms = single.terms(self.words);
+        let (Some((factor, scale)), None) = (terms.next(), terms.next()) else {
+            return Ok(None);
+        };
+        self.meter.spend(polynomial.len() as u64)?;
+        let mut product = Polynomial::with_capacity(polynomial.len(), self.words);
+        let mut sum = vec![0; self.words];
+        for (monomial, coefficient) in polynomial.terms(self.words) {
+            for (sum, (p, q)) in sum.iter_mut().zip(monomial.iter().zip(factor)) {
+                *sum = p + q;
+            }
+            if sum.iter().any(|word| word & GUARD != 0) {
+                return Err(Limit::Exponent(MOST_EXPONENT));
+            }
+            if self.reducible(&sum).is_some() {
+                return Ok(None);
+            }
+            product.push(&sum, coefficient * scale);
+        }
+        self.allowed(product).map(Some)
     }
 
     /// The polynomial times a number.
@@ -181,6 +265,22 @@ impl<'a> Ring<'a> {
             result = self.product(&result, base)?;
         }
         Ok(result)
+    }
+
+    /// The partial derivative by a variable: the order of those terms that have it stays.
+    pub(crate) fn slope(&self, polynomial: &Polynomial, place: usize) -> Result<Polynomial, Limit> {
+        self.meter.spend(polynomial.len() as u64)?;
+        let mut slope = Polynomial::default();
+        let mut lowered = vec![0; self.words];
+        for (monomial, coefficient) in polynomial.terms(self.words) {
+            let power = exponent(monomial, place);
+            if power > 0 {
+                lowered.copy_from_slice(monomial);
+                lowered[place / 8] -= 1 << shift(place);
+                slope.push(&lowered, coefficient * &Rational::from(i64::from(power)));
+            }
+        }
+        self.allowed(slope)
     }
 
     /// The sum of the partial derivatives by some variables, each times a polynomial.
@@ -274,11 +374,7 @@ impl<'a> Ring<'a> {
 
     fn finished(&self, result: Accumulator) -> Result<Polynomial, Limit> {
         self.meter.allow_terms(result.len())?;
-        let result = result.sorted();
-        for coefficient in &result.coefficients {
-            self.meter.allow_bits(coefficient.bits())?;
-        }
-        Ok(result)
+        self.allowed(result.sorted())
     }
 
     /// The quotient where the division leaves nothing.

@@ -14,6 +14,22 @@ pub(crate) struct Polynomial {
 }
 
 impl Polynomial {
+    /// Room for this many terms.
+    pub(super) fn with_capacity(terms: usize, words: usize) -> Self {
+        Self {
+            exponents: Vec::with_capacity(terms * words),
+            coefficients: Vec::with_capacity(terms),
+        }
+    }
+
+    /// Puts a term behind those there are, unless it is zero; its monomial has to be below theirs.
+    pub(super) fn push(&mut self, monomial: &[u64], coefficient: Rational) {
+        if !coefficient.is_zero() {
+            self.exponents.extend_from_slice(monomial);
+            self.coefficients.push(coefficient);
+        }
+    }
+
     /// How many terms there are.
     pub(crate) fn len(&self) -> usize {
         self.coefficients.len()
