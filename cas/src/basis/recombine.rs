@@ -99,14 +99,21 @@ impl Basis {
         let form = Canonical::in_basis(self.clone(), expressions, meter)?;
         let mut together = BTreeSet::new();
         for fraction in &form.fractions {
-            for (exponents, _) in form.ring.terms(&fraction.numerator) {
-                let present = self
-                    .angles
-                    .iter()
-                    .enumerate()
-                    .filter(|(_, angle)| exponents[angle.cosine] + exponents[angle.cosine + 1] > 0);
+            let terms = form.ring.terms(&fraction.numerator);
+            let monomials: BTreeSet<Vec<u32>> = terms.map(|(exponents, _)| exponents).collect();
+            for monomial in &monomials {
+                let angles = self.angles.iter().enumerate();
+                let present = angles.filter(|(_, angle)| is_once(monomial, angle.cosine));
                 let present: Vec<(usize, i64)> = present.map(|(place, _)| (place, 1)).collect();
-                together.extend(pairs(&present));
+                // Only where both halves of an addition theorem stand is there something to gain.
+                together.extend(pairs(&present).into_iter().filter(|(a, b)| {
+                    let mut other = monomial.clone();
+                    for angle in [*a, *b] {
+                        let cosine = self.angles[angle].cosine;
+                        other.swap(cosine, cosine + 1);
+                    }
+                    monomials.contains(&other)
+                }));
             }
         }
         let mut best: Option<(Step, usize)> = None;
@@ -137,16 +144,22 @@ impl Basis {
     fn take(&mut self, step: Step) {
         let other = self.angles[step.other].value;
         let angle = &mut self.angles[step.replaced];
-        angle.value = angle.value + Expr::from(step.sign) * other;
+        angle.value += Expr::from(step.sign) * other;
         let place = angle.cosine;
         self.variables[place] = Expr::elementary(Function::Cosine, angle.value);
         self.variables[place + 1] = Expr::elementary(Function::Sine, angle.value);
-        for leaf in self.leaves.values_mut() {
+        // Each is changed by itself, so the order in which they come says nothing.
+        self.leaves.values_mut().for_each(|leaf| {
             if let Leaf::Turn { angles, .. } = leaf {
                 *angles = changed(angles, step);
             }
-        }
+        });
     }
+}
+
+/// Whether the cosine at this place and the sine behind it have the degree one together.
+fn is_once(monomial: &[u32], cosine: usize) -> bool {
+    monomial[cosine] + monomial[cosine + 1] == 1
 }
 
 /// How many terms the sine of a combination of angles has once it is multiplied out, roughly.
