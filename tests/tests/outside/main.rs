@@ -1,7 +1,8 @@
-//! Derived equations, accelerations and reactions against published ones.
+//! Derived equations, accelerations and reactions, and verdicts on identities, against published ones.
 
 mod accelerations;
 mod equations;
+mod identities;
 mod planted;
 mod reference;
 mod steps;
