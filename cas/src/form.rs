@@ -33,8 +33,10 @@ pub struct Forms<'m> {
     canonical: Canonical<'m>,
 }
 
-/// An expression in canonical form; it is zero as a function where it has no terms, as long as all its
-/// functions are sines, cosines, tangents and undetermined ones.
+/// An expression in canonical form.
+///
+/// Without terms it is zero. With terms it is not zero as a function, as long as all its functions are
+/// undetermined ones, or sines, cosines and tangents of linear combinations of symbols.
 #[derive(Clone, Debug, PartialEq, Eq)]
 pub struct Form(Fraction);
 

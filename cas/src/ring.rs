@@ -107,29 +107,22 @@ impl<'a> Ring<'a> {
             _ => {}
         }
         // Neighbours first, then sums of neighbours: every term is looked at a few times only.
-        let mut level: Vec<Polynomial> = Vec::with_capacity(parts.len().div_ceil(2));
-        for pair in parts.chunks(2) {
-            self.meter
-                .spend(pair.iter().map(|part| part.len() as u64).sum())?;
-            level.push(match pair {
-                [left, right] => self.merged(left, right),
-                _ => pair[0].clone(),
-            });
-        }
+        let mut level = self.paired(parts)?;
         while level.len() > 1 {
-            let mut next = Vec::with_capacity(level.len().div_ceil(2));
-            for pair in level.chunks(2) {
-                self.meter
-                    .spend(pair.iter().map(|part| part.len() as u64).sum())?;
-                next.push(match pair {
-                    [left, right] => self.merged(left, right),
-                    _ => pair[0].clone(),
-                });
-            }
-            level = next;
+            level = self.paired(&level.iter().collect::<Vec<_>>())?;
         }
-        let sum = level.pop().unwrap_or_default();
-        self.allowed(sum)
+        self.allowed(level.pop().unwrap_or_default())
+    }
+
+    /// The sums of neighbours; the last has none where their number is odd.
+    fn paired(&self, parts: &[&Polynomial]) -> Result<Vec<Polynomial>, Limit> {
+        self.meter
+            .spend(parts.iter().map(|part| part.len() as u64).sum())?;
+        let pairs = parts.chunks(2).map(|pair| match pair {
+            [left, right] => self.merged(left, right),
+            _ => pair[0].clone(),
+        });
+        Ok(pairs.collect())
     }
 
     /// The sum of two polynomials: both are in order, so one walk along them suffices.

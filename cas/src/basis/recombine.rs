@@ -30,10 +30,10 @@ impl Basis {
     /// Only angles that are the same multiple of the same monomial in both are replaced.
     pub(crate) fn recombine(&mut self, shortened: &[Expr], meter: &Meter) -> Result<(), Failure> {
         let mut small = Self::of(shortened, meter)?;
+        let theirs = small.angles.clone();
         let steps = small.steps(shortened, meter)?;
         let place = |values: &[Expr], value: Expr| values.iter().position(|known| *known == value);
         let own: Vec<Expr> = self.angles.iter().map(|angle| angle.value).collect();
-        let theirs = Self::of(shortened, meter)?.angles;
         for step in steps {
             let found = [step.replaced, step.other].map(|angle| place(&own, theirs[angle].value));
             if let [Some(replaced), Some(other)] = found {
